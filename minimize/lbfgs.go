@@ -1,0 +1,97 @@
+package minimize
+
+import (
+	"context"
+	"errors"
+
+	"gonum.org/v1/gonum/floats"
+	"gonum.org/v1/gonum/optimize"
+)
+
+// errStalled says that line searches fail although the gradient is not yet small enough.
+var errStalled = errors.New("line searches fail")
+
+// restarts is how often L-BFGS forgets its history and goes on with a shorter step before it is given up.
+const restarts = 4
+
+// descent drives gonum's L-BFGS and line search itself instead of through optimize.Minimize, which starts three goroutines and
+// sends every evaluation over channels: that costs about a fifth of an evaluation at 50 atoms, and a panic there could not be
+// caught by the caller of the force field.
+type descent struct {
+	limited limitedSteps
+	search  optimize.LinesearchMethod
+	loc     optimize.Location
+}
+
+// limitedSteps shortens the first step along each direction so that no atom moves farther than the limit.
+type limitedSteps struct {
+	lbfgs *optimize.LBFGS
+	limit float64
+}
+
+func (l *limitedSteps) InitDirection(loc *optimize.Location, dir []float64) float64 {
+	return l.shorten(l.lbfgs.InitDirection(loc, dir), loc, dir)
+}
+
+func (l *limitedSteps) NextDirection(loc *optimize.Location, dir []float64) float64 {
+	return l.shorten(l.lbfgs.NextDirection(loc, dir), loc, dir)
+}
+
+func (l *limitedSteps) shorten(step float64, loc *optimize.Location, dir []float64) float64 {
+	length := reach(dir)
+	if !isFinite(length) { // the history has become useless
+		copy(dir, loc.Gradient)
+		floats.Scale(-1, dir)
+		length = reach(dir)
+	}
+	return min(step, l.limit/length)
+}
+
+// descend follows L-BFGS from the best point until its rms gradient is at or below target. It returns errStalled, the error of ctx,
+// or a NotConvergedError if the budget is spent.
+func (q *Quencher) descend(ctx context.Context, target float64) error {
+	limit := q.settings.MaxStep
+	for range restarts {
+		if q.at.rms() <= target {
+			return nil
+		}
+		err := q.descendOnce(ctx, target, limit)
+		if !errors.Is(err, errStalled) {
+			return err
+		}
+		limit /= 4
+	}
+	return errStalled
+}
+
+// descendOnce returns errStalled if a line search fails or meets an energy that is not finite.
+func (q *Quencher) descendOnce(ctx context.Context, target, limit float64) error {
+	d := &q.descent
+	// A new LBFGS: gonum does not clear all of the history of the last run.
+	d.limited = limitedSteps{lbfgs: &optimize.LBFGS{Store: 15}, limit: limit}
+	d.search = optimize.LinesearchMethod{NextDirectioner: &d.limited, Linesearcher: &optimize.MoreThuente{}}
+	trial := &q.trial
+	trial.copyFrom(&q.at)
+	d.loc = optimize.Location{X: trial.x, F: trial.energy, Gradient: trial.grad}
+	operation, err := d.search.Init(&d.loc)
+	for err == nil {
+		switch operation {
+		case optimize.MajorIteration:
+			q.at.copyFrom(trial)
+			if q.at.rms() <= target {
+				return nil
+			}
+		default:
+			if err := q.mayGoOn(ctx); err != nil {
+				return err
+			}
+			q.evaluate(trial)
+			if !trial.finite() {
+				return errStalled
+			}
+			d.loc.F = trial.energy
+		}
+		operation, err = d.search.Iterate(&d.loc)
+	}
+	return errStalled
+}
