@@ -1,9 +1,6 @@
 package forcefield
 
-import (
-	"fmt"
-	"math"
-)
+import "fmt"
 
 // LennardJones is a cluster of equal atoms in reduced units: every pair contributes 4(r⁻¹² − r⁻⁶), so that the well depth
 // is 1 at r = 2^(1/6). Source: J. E. Jones, Proc. R. Soc. Lond. A 106, 463 (1924).
@@ -30,7 +27,10 @@ const innerSquare = 0.0625
 
 // pairOfSquare returns the energy of a pair and its first two derivatives with respect to s = r².
 func pairOfSquare(s float64) (e, e1, e2 float64) {
-	t := math.Max(s, innerSquare)
+	t := s
+	if s < innerSquare {
+		t = innerSquare
+	}
 	inv := 1 / t
 	inv3 := inv * inv * inv
 	e = 4 * inv3 * (inv3 - 1)
@@ -75,28 +75,12 @@ func (f *LennardJones) Energy(x, grad []float64) float64 {
 // Hessian writes the second derivatives, in units of the well depth over σ², to h, 3N×3N, row-major.
 func (f *LennardJones) Hessian(x, h []float64) {
 	clear(h)
-	for i := range f.atoms {
-		for j := i + 1; j < f.atoms; j++ {
-			d := [3]float64{x[3*i] - x[3*j], x[3*i+1] - x[3*j+1], x[3*i+2] - x[3*j+2]}
-			_, e1, e2 := pairOfSquare(d[0]*d[0] + d[1]*d[1] + d[2]*d[2])
-			addPairBlocks(h, f.atoms, i, j, d, 2*e1, 4*e2)
-		}
-	}
-}
-
-// addPairBlocks adds a·δ + b·d·dᵀ to the diagonal blocks of atoms i and j and subtracts it from the blocks between them.
-func addPairBlocks(h []float64, atoms, i, j int, d [3]float64, a, b float64) {
-	n := 3 * atoms
-	for p := range 3 {
-		for q := range 3 {
-			v := b * d[p] * d[q]
-			if p == q {
-				v += a
-			}
-			h[(3*i+p)*n+3*i+q] += v
-			h[(3*j+p)*n+3*j+q] += v
-			h[(3*i+p)*n+3*j+q] -= v
-			h[(3*j+p)*n+3*i+q] -= v
+	end := int32(3 * f.atoms)
+	for i := int32(0); i < end; i += 3 {
+		for j := i + 3; j < end; j += 3 {
+			d := place(x, i).minus(place(x, j))
+			_, e1, e2 := pairOfSquare(d.dot(d))
+			addPairBlocks(h, int(end), i, j, d, 2*e1, 4*e2)
 		}
 	}
 }
