@@ -11,7 +11,7 @@ const (
 	delta, gamma = 0.07, 0.12
 
 	// noOverlap is added to a distance before the division by it, so that coincident atoms have a finite gradient; it
-	// changes no other distance.
+	// is too small to change any other distance.
 	noOverlap = 1e-200
 )
 
@@ -30,81 +30,121 @@ type nonbonded struct {
 	distanceDependent bool
 }
 
+// block is the number of pairs whose distances are held at a time. Three short loops over a block are faster than one long
+// loop over the pairs, whose many values do not fit the registers.
+const block = 64
+
 // energy returns the sums over all pairs. Source: J. Comput. Chem. 17, 520 (1996), eqs. 8 and 14.
 func (b *nonbonded) energy(x []float64) (vdw, electrostatic float64) {
+	var buffer [block]float64
 	start := int32(0)
 	for i, end := range b.end {
 		at := place(x, int32(3*i))
-		row := b.pairs[start:end]
-		for n := range row {
-			p := &row[n]
-			q := (*[3]float64)(x[p.j:])
-			dx, dy, dz := at.x-q[0], at.y-q[1], at.z-q[2]
-			r := math.Sqrt(dx*dx + dy*dy + dz*dz)
-			rho := r * p.inverse
-			rho2 := rho * rho
-			rho6 := rho2 * rho2 * rho2
-			u, v, w := rho+delta, rho6*rho+gamma, r+chargeBuffer
-			inverse := 1 / (u * v * w)
-			f := (1 + delta) * inverse * v * w
-			f2 := f * f
-			iw := inverse * u * v
-			eq := p.charge * iw
-			if b.distanceDependent {
-				eq *= iw
-			}
-			vdw += p.depth * (f2 * f2 * f2 * f) * ((1+gamma)*inverse*u*w - 2)
-			electrostatic += eq
+		for start < end {
+			stop := min(end, start+block)
+			pairs := b.pairs[start:stop]
+			distances := buffer[:len(pairs)]
+			measure(pairs, at, x, distances)
+			v, e := b.sum(pairs, distances)
+			vdw, electrostatic = vdw+v, electrostatic+e
+			start = stop
 		}
-		start = end
 	}
 	return vdw, electrostatic
 }
 
 // energyGradient returns the sum over all pairs and adds the gradient to grad.
 func (b *nonbonded) energyGradient(x, grad []float64) float64 {
+	var buffer [block]float64
 	total := 0.0
 	start := int32(0)
 	for i, end := range b.end {
 		at := place(x, int32(3*i))
-		var gx, gy, gz float64
-		row := b.pairs[start:end]
-		for n := range row {
-			p := &row[n]
-			q := (*[3]float64)(x[p.j:])
-			dx, dy, dz := at.x-q[0], at.y-q[1], at.z-q[2]
-			r := math.Sqrt(dx*dx + dy*dy + dz*dz)
-			rho := r * p.inverse
-			rho2 := rho * rho
-			rho6 := rho2 * rho2 * rho2
-			u, v, w, s := rho+delta, rho6*rho+gamma, r+chargeBuffer, r+noOverlap
-			uv, ws := u*v, w*s
-			inverse := 1 / (uv * ws)
-			iuv, iws := inverse*ws, inverse*uv
-			iu, iv, iw := iuv*v, iuv*u, iws*s
-			f := (1 + delta) * iu
-			f2 := f * f
-			f7 := p.depth * (f2 * f2 * f2 * f)
-			g := (1+gamma)*iv - 2
-			eq := p.charge * iw
-			slope := eq * iw
-			if b.distanceDependent {
-				eq = slope
-				slope *= 2 * iw
-			}
-			total += f7*g + eq
-			slope = -(7*p.inverse*f7*(g*iu+(1+gamma)*rho6*iv*iv) + slope) * iws * w
-			dx, dy, dz = dx*slope, dy*slope, dz*slope
-			gx, gy, gz = gx+dx, gy+dy, gz+dz
-			gj := (*[3]float64)(grad[p.j:])
-			gj[0] -= dx
-			gj[1] -= dy
-			gj[2] -= dz
+		for start < end {
+			stop := min(end, start+block)
+			pairs := b.pairs[start:stop]
+			values := buffer[:len(pairs)]
+			measure(pairs, at, x, values)
+			total += b.slopes(pairs, values)
+			add(grad, int32(3*i), push(pairs, at, x, values, grad))
+			start = stop
 		}
-		add(grad, int32(3*i), vector{gx, gy, gz})
-		start = end
 	}
 	return total
+}
+
+// measure writes the distances of the pairs of the atom at a place.
+func measure(pairs []pair, at vector, x, distances []float64) {
+	distances = distances[:len(pairs)]
+	for n := range pairs {
+		q := (*[3]float64)(x[pairs[n].j:])
+		dx, dy, dz := at.x-q[0], at.y-q[1], at.z-q[2]
+		distances[n] = math.Sqrt(dx*dx + dy*dy + dz*dz)
+	}
+}
+
+// sum returns the energies of pairs at their distances.
+func (b *nonbonded) sum(pairs []pair, distances []float64) (vdw, electrostatic float64) {
+	distances = distances[:len(pairs)]
+	for n := range pairs {
+		p := &pairs[n]
+		r := distances[n]
+		rho := r * p.inverse
+		rho2 := rho * rho
+		f := (1 + delta) / (rho + delta)
+		f2 := f * f
+		w := 1 / (r + chargeBuffer)
+		eq := p.charge * w
+		if b.distanceDependent {
+			eq *= w
+		}
+		vdw += p.depth * (f2 * f2 * f2 * f) * ((1+gamma)/(rho2*rho2*rho2*rho+gamma) - 2)
+		electrostatic += eq
+	}
+	return vdw, electrostatic
+}
+
+// slopes returns the energy of pairs and replaces each distance r by (dE/dr)/r.
+func (b *nonbonded) slopes(pairs []pair, values []float64) float64 {
+	total := 0.0
+	values = values[:len(pairs)]
+	for n := range pairs {
+		p := &pairs[n]
+		r := values[n]
+		rho := r * p.inverse
+		rho2 := rho * rho
+		rho6 := rho2 * rho2 * rho2
+		u, v, w := 1/(rho+delta), (1+gamma)/(rho6*rho+gamma), 1/(r+chargeBuffer)
+		f := (1 + delta) * u
+		f2 := f * f
+		f7 := p.depth * (f2 * f2 * f2 * f)
+		g := v - 2
+		eq := p.charge * w
+		slope := eq * w
+		if b.distanceDependent {
+			eq = slope
+			slope *= 2 * w
+		}
+		total += f7*g + eq
+		values[n] = (-7*p.inverse*f7*(g*u+1/(1+gamma)*rho6*v*v) - slope) / (r + noOverlap)
+	}
+	return total
+}
+
+// push subtracts the gradient of pairs at their second atoms and returns it at the first.
+func push(pairs []pair, at vector, x, slopes, grad []float64) vector {
+	var gx, gy, gz float64
+	slopes = slopes[:len(pairs)]
+	for n := range pairs {
+		j, slope := pairs[n].j, slopes[n]
+		q, g := (*[3]float64)(x[j:]), (*[3]float64)(grad[j:])
+		dx, dy, dz := slope*(at.x-q[0]), slope*(at.y-q[1]), slope*(at.z-q[2])
+		gx, gy, gz = gx+dx, gy+dy, gz+dz
+		g[0] -= dx
+		g[1] -= dy
+		g[2] -= dz
+	}
+	return vector{gx, gy, gz}
 }
 
 // hessian adds the second derivatives to h. Coincident atoms have none and are left out.
