@@ -77,8 +77,8 @@ func (q *Quencher) descendOnce(ctx context.Context, target, limit float64) error
 	for err == nil {
 		switch operation {
 		case optimize.MajorIteration:
-			q.at.copyFrom(trial)
-			if q.at.rms() <= target {
+			if trial.rms() <= target {
+				q.at.copyFrom(trial)
 				return nil
 			}
 		default:
@@ -88,6 +88,9 @@ func (q *Quencher) descendOnce(ctx context.Context, target, limit float64) error
 			q.evaluate(trial)
 			if !trial.finite() {
 				return errStalled
+			}
+			if trial.energy < q.at.energy {
+				q.at.copyFrom(trial)
 			}
 			d.loc.F = trial.energy
 		}

@@ -17,8 +17,6 @@ const (
 	maxHessians = 100
 	// noise is the relative rounding error of an energy: smaller differences say nothing.
 	noise = 1e-12
-	// difference is the displacement for finite-difference Hessians, Å.
-	difference = 1e-4
 )
 
 // newton is the workspace of the finish.
@@ -48,7 +46,7 @@ func (q *Quencher) finish(ctx context.Context) (Result, error) {
 		if err := q.mayGoOn(ctx); err != nil {
 			return q.result(), err
 		}
-		if err := q.takeHessian(); err != nil {
+		if err := q.projectedHessian(); err != nil {
 			return q.result(), err
 		}
 		converged := q.at.rms() <= q.settings.GradientRMS
@@ -88,16 +86,15 @@ func (q *Quencher) finish(ctx context.Context) (Result, error) {
 	return q.result(), q.notConverged("too many Newton steps were taken")
 }
 
-// takeHessian fills the workspace with the projected Hessian at the best point.
-func (q *Quencher) takeHessian() error {
+// projectedHessian fills the workspace with the projected Hessian at the best point.
+func (q *Quencher) projectedHessian() error {
 	w := &q.newton
 	n := len(q.at.x)
 	h := w.hessian.RawSymmetric().Data
-	if f, ok := q.field.(Hessian); ok {
-		f.Hessian(q.at.x, h)
+	evaluations := takeHessian(q.field, q.at.x, h, q.trial, w.step.RawVector().Data)
+	q.evaluations += evaluations
+	if evaluations == 0 {
 		q.hessians++
-	} else {
-		q.differenceHessian(h)
 	}
 	bound := 1.0
 	for i := range n {
@@ -112,28 +109,6 @@ func (q *Quencher) takeHessian() error {
 	return nil
 }
 
-// differenceHessian takes the Hessian at the best point by central differences of gradients.
-func (q *Quencher) differenceHessian(h []float64) {
-	n := len(q.at.x)
-	copy(q.trial.x, q.at.x)
-	forward := q.newton.step.RawVector().Data
-	for j := range n {
-		q.trial.x[j] = q.at.x[j] + difference
-		q.evaluate(&q.trial)
-		copy(forward, q.trial.grad)
-		q.trial.x[j] = q.at.x[j] - difference
-		q.evaluate(&q.trial)
-		q.trial.x[j] = q.at.x[j]
-		floats.SubTo(h[j*n:(j+1)*n], forward, q.trial.grad)
-	}
-	for i := range n {
-		for j := range i + 1 {
-			v := (h[i*n+j] + h[j*n+i]) / (4 * difference)
-			h[i*n+j], h[j*n+i] = v, v
-		}
-	}
-}
-
 // stiffen adds to the diagonal of a Hessian that is flat in some direction and factorises it again.
 func (w *newton) stiffen(shift float64) {
 	for i := range w.hessian.SymmetricDim() {
@@ -142,37 +117,36 @@ func (w *newton) stiffen(shift float64) {
 	w.cholesky.Factorize(w.hessian)
 }
 
-// newtonStep tries the Newton step of the factorised Hessian, shortened until it lowers the energy, and says whether it moved. A
-// polishing step is taken whole and only if it lowers the gradient.
+// newtonStep tries the Newton step of the factorised Hessian and says whether it moved. A step that is too long or does not lower the
+// energy is tried again with a stiffer Hessian (Levenberg, Marquardt), which shortens it in the soft modes, where the quadratic model
+// fails first. A polishing step is taken whole and only if it lowers the gradient.
 func (q *Quencher) newtonStep(polish bool) bool {
 	w := &q.newton
 	step := w.step.RawVector().Data
-	if err := w.cholesky.SolveVecTo(w.step, mat.NewVecDense(len(step), q.at.grad)); err != nil {
-		if _, ill := err.(mat.Condition); !ill {
+	gradient := mat.NewVecDense(len(step), q.at.grad)
+	tolerance := noise * max(1, math.Abs(q.at.energy))
+	for radius, tries := q.settings.MaxStep, 0; tries < 10; tries++ {
+		if err := w.cholesky.SolveVecTo(w.step, gradient); err != nil && !errors.As(err, new(mat.Condition)) {
 			return false
 		}
-	}
-	floats.Scale(-1, step)
-	slope := floats.Dot(step, q.at.grad)
-	t := 1.0
-	if length := reach(step); length > q.settings.MaxStep {
-		t = q.settings.MaxStep / length
-	}
-	tolerance := noise * max(1, math.Abs(q.at.energy))
-	for range 6 {
-		q.tryStep(t, step)
-		lower := q.trial.energy <= q.at.energy+1e-4*t*slope
-		if polish || -t*slope < tolerance {
-			lower = q.trial.rms() < q.at.rms()
-		}
-		if lower && q.trial.finite() {
-			q.accept()
-			return true
+		floats.Scale(-1, step)
+		if length := reach(step); length <= radius {
+			slope := floats.Dot(step, q.at.grad)
+			q.tryStep(1, step)
+			lower := q.trial.energy <= q.at.energy+1e-4*slope
+			if polish || -slope < tolerance {
+				lower = q.trial.rms() < q.at.rms()
+			}
+			if lower && q.trial.finite() {
+				q.accept()
+				return true
+			}
+			radius = length / 4
 		}
 		if polish {
 			return false
 		}
-		t /= 4
+		w.stiffen(floats.Norm(q.at.grad, 2) / radius)
 	}
 	return false
 }

@@ -57,10 +57,12 @@ type Quencher struct {
 	newton   newton
 
 	// The best point so far and the one being tried.
-	at, trial   point
-	evaluations int
-	hessians    int
-	saddles     int
+	at, trial point
+	// A saddle that is being left, and the point reached on one side of it.
+	saddle, backward point
+	evaluations      int
+	hessians         int
+	saddles          int
 }
 
 // point is a geometry with its energy and gradient.
@@ -90,7 +92,7 @@ func NewQuencher(f Field, s Settings) *Quencher {
 	n := 3 * f.Atoms()
 	return &Quencher{
 		field: f, settings: s.withDefaults(f.Atoms()),
-		at: newPoint(n), trial: newPoint(n), newton: newNewton(n),
+		at: newPoint(n), trial: newPoint(n), saddle: newPoint(n), backward: newPoint(n), newton: newNewton(n),
 	}
 }
 

@@ -17,9 +17,9 @@ const (
 )
 
 // leaveSaddle takes the best point out of a region where the Hessian, which has been diagonalised, has a negative eigenvalue. On a
-// slope L-BFGS goes on. Near a saddle the geometry is pushed along the most negative mode, to the side where the energy is lower;
-// if both are equal, as at a saddle between mirror images, to the side where the first large component of the mode is positive.
-// Then L-BFGS runs again.
+// slope L-BFGS goes on. Near a saddle the geometry is pushed along the most negative mode to both sides, L-BFGS relaxes both, and the
+// lower one is kept; if both are equal, as at a saddle between mirror images, the one to which the first large component of the mode
+// is positive.
 func (q *Quencher) leaveSaddle(ctx context.Context) error {
 	if rms := q.at.rms(); rms > saddleRMS {
 		if err := q.descend(ctx, max(rms/10, saddleRMS)); !errors.Is(err, errStalled) {
@@ -27,26 +27,42 @@ func (q *Quencher) leaveSaddle(ctx context.Context) error {
 		}
 	}
 	mode := q.lowestMode()
-	tolerance := 1e-9 * max(1, math.Abs(q.at.energy))
-	for t := push / reach(mode); t*reach(mode) > push/1000; t /= 2 {
-		q.tryStep(-t, mode)
-		backward := q.trial.energy
-		q.tryStep(t, mode)
-		if backward < q.trial.energy-tolerance {
-			q.tryStep(-t, mode)
+	// Tight enough for what is left of the push in stiff modes to be small beside what the soft one gains.
+	target := math.Sqrt(-q.newton.lowest) * push / 2
+	target = max(q.settings.GradientRMS, min(target, q.settings.CrudeRMS))
+	q.saddle.copyFrom(&q.at)
+	for t := push / reach(mode); t*reach(mode) > push/100; t /= 4 {
+		if err := q.relaxPushed(ctx, -t, mode, target); err != nil {
+			return err
 		}
-		if q.trial.energy >= q.at.energy || !q.trial.finite() {
-			continue
+		q.backward.copyFrom(&q.at)
+		if err := q.relaxPushed(ctx, t, mode, target); err != nil {
+			return err
 		}
-		q.accept()
-		q.saddles++
-		err := q.descend(ctx, min(q.settings.CrudeRMS, max(q.at.rms()/10, q.settings.GradientRMS)))
-		if errors.Is(err, errStalled) {
+		if q.backward.energy < q.at.energy-1e-9*max(1, math.Abs(q.at.energy)) {
+			q.at.copyFrom(&q.backward)
+		}
+		if q.at.energy < q.saddle.energy {
+			q.saddles++
 			return nil
 		}
+	}
+	q.at.copyFrom(&q.saddle)
+	return q.notConverged("the energy falls on no side of a saddle")
+}
+
+// relaxPushed leaves the best point where L-BFGS ends from the saddle + t·mode.
+func (q *Quencher) relaxPushed(ctx context.Context, t float64, mode []float64, target float64) error {
+	q.at.copyFrom(&q.saddle)
+	q.tryStep(t, mode)
+	if !q.trial.finite() {
+		return nil
+	}
+	q.accept()
+	if err := q.descend(ctx, target); !errors.Is(err, errStalled) {
 		return err
 	}
-	return q.notConverged("the energy falls on no side of a saddle")
+	return nil
 }
 
 // lowestMode returns the unit eigenvector of the lowest eigenvalue with the first of its large components positive.
