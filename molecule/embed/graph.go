@@ -22,6 +22,9 @@ const far = 5
 func newGraph(m *molecule.Molecule) *graph {
 	g := &graph{Molecule: m, rings: m.Rings()}
 	g.aromaticAtom, g.aromaticBond = m.Aromaticity()
+	if g.aromaticBond == nil {
+		g.aromaticAtom, g.aromaticBond = make([]bool, len(m.Atoms)), make([]bool, len(m.Bonds))
+	}
 	n := len(m.Atoms)
 	g.hops = make([][]uint8, n)
 	g.linear, g.planar = make([]bool, n), make([]bool, n)
@@ -146,6 +149,19 @@ func (g *graph) isCarbonyl(c, except int) bool {
 		}
 	}
 	return false
+}
+
+// flatEnd says whether the atom can be the end of a double bond that keeps its substituents in one plane.
+func (g *graph) flatEnd(i int) bool {
+	if g.linear[i] {
+		return false
+	}
+	switch n := len(g.Neighbors(i)); g.Atoms[i].Element {
+	case boron, carbon, nitrogen, oxygen:
+		return n <= 3
+	default:
+		return n <= 2
+	}
 }
 
 // others returns the neighbours of an atom without one of them.
