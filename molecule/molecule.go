@@ -59,6 +59,7 @@ type Molecule struct {
 	DoubleBonds []DoubleBond // the specified double-bond geometries
 
 	neighbors [][]Neighbor
+	perception
 }
 
 // New makes a molecule from complete parts: all hydrogens present, all bond orders set. It returns an error if an index
@@ -85,6 +86,7 @@ func New(name string, atoms []Atom, bonds []Bond, centers []Center, doubleBonds 
 		m.neighbors[b.A] = append(m.neighbors[b.A], Neighbor{b.B, i})
 		m.neighbors[b.B] = append(m.neighbors[b.B], Neighbor{b.A, i})
 	}
+	m.perception = perceptionOf(m)
 	return m, nil
 }
 

@@ -1,14 +1,5 @@
 package molecule
 
-import "errors"
-
-// Build completes a draft: it fills valences, appends the implied hydrogens (grouped by parent atom, in order), places
-// the double bonds of aromatic rings and checks valences. Errors are *ValenceError, *KekuleError or *BuildError.
-func (d *Draft) Build() (*Molecule, error) { return nil, errors.New("not built yet") }
-
-// Rings returns a smallest set of smallest rings: atom indices in ring order, small rings first.
-func (m *Molecule) Rings() [][]int { return nil }
-
 // Aromaticity tells which atoms and which bonds are aromatic.
 func (m *Molecule) Aromaticity() (atoms, bonds []bool) { return nil, nil }
 
