@@ -31,7 +31,7 @@ func (t *Tables) RuleTorsion(j, k, order int, aromatic bool) (Torsion, error) {
 	switch {
 	case aromatic: // rule b
 		strength, conjugation := 6.0, 0.3
-		if min(a.MaxValence, b.MaxValence) == 3 && max(a.MaxValence, b.MaxValence) == 4 {
+		if mixedValence(a, b) {
 			strength = 3
 		}
 		if !a.LonePair && !b.LonePair {
@@ -57,6 +57,11 @@ func (t *Tables) RuleTorsion(j, k, order int, aromatic bool) (Torsion, error) {
 		return Torsion{V2: -math.Sqrt(ta.w * tb.w)}, nil
 	}
 	return threefold, nil
+}
+
+// mixedValence says whether one atom is three-valent and the other four-valent.
+func mixedValence(a, b Atom) bool {
+	return min(a.MaxValence, b.MaxValence) == 3 && max(a.MaxValence, b.MaxValence) == 4
 }
 
 // flat says that rotation about the bond from a saturated atom to an atom like a has no barrier of its own.
