@@ -51,7 +51,7 @@ func TestDrawingsOfOneMolecule(t *testing.T) {
 		{"acetamidinium", []int{1, 57, 55, 55}, [][2]string{{"CH3 C NH2+ NH2", "1-2 2=3 2-4"}, {"CH3 C NH2 NH2+", "1-2 2-3 2=4"}}},
 		{"guanidinium", []int{57, 56, 56, 56}, [][2]string{{"C NH2+ NH2 NH2", "1=2 1-3 1-4"}, {"C NH2 NH2 NH2+", "1-2 1-3 1=4"}}},
 		{"imidazolium", []int{81, 80, 81, 78, 78}, [][2]string{{"NH+ CH NH CH CH", "1=2 2-3 3-4 4=5 5-1"}, {"NH CH NH+ CH CH", "1-2 2=3 3-4 4=5 5-1"}}},
-		{"tetrazolide", []int{76, 76, 76, 76, 78}, [][2]string{{"N- N N N CH", "1-2 2=3 3-4 4=5 5-1"}, {"N N N N- CH", "1=2 2-3 3-4 4-5 5=1"}}},
+		{"tetrazolide", []int{76, 76, 76, 76, 78}, [][2]string{{"N- N N N CH", "1-2 2=3 3-4 4=5 5-1"}, {"N N N N- CH", "1-2 2=3 3-4 4-5 5=1"}}},
 		{"naphthalene", []int{37, 37, 37, 37, 37, 37, 37, 37, 37, 37}, [][2]string{
 			{"CH CH CH CH C CH CH CH CH C", "1=2 2-3 3=4 4-5 5=10 10-1 5-6 6=7 7-8 8=9 9-10"},
 			{"CH CH CH CH C CH CH CH CH C", "1=2 2-3 3=4 4-5 5=6 10-1 5-10 6-7 7=8 8-9 9=10"},
