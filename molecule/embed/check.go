@@ -12,7 +12,7 @@ const (
 	bondTolerance    = 0.25 // Å
 	angleTolerance   = 0.15 // of the distance of two atoms that share a neighbour
 	contactTolerance = 0.25 // of any other distance
-	volumeTolerance  = 0.6  // of the volume asked for at a stereocentre
+	volumeTolerance  = 0.5  // of the volume asked for at a stereocentre
 	flatTolerance    = 35.0 // degrees out of plane at a specified double bond outside rings
 )
 
@@ -36,10 +36,15 @@ func (d *draw) check(g molecule.Geometry) error {
 			}
 		}
 	}
+	return d.stereo(g)
+}
+
+// stereo returns an error that names the first specified stereocentre or double bond that has come out wrong.
+func (d *draw) stereo(g molecule.Geometry) error {
 	for _, v := range d.volumes {
 		size := signedVolume(g, v.atoms)
 		if math.IsInf(v.high, 1) && size < volumeTolerance*v.low || math.IsInf(v.low, -1) && size > volumeTolerance*v.high {
-			return fmt.Errorf("the stereocentre with neighbours %d, %d, %d, %d is inverted or flat", v.atoms[0]+1, v.atoms[1]+1, v.atoms[2]+1, v.atoms[3]+1)
+			return fmt.Errorf("the stereocentre at atoms %d, %d, %d, %d is inverted or flat (%.2f Å³, bounds %.2f to %.2f)", v.atoms[0]+1, v.atoms[1]+1, v.atoms[2]+1, v.atoms[3]+1, size, v.low, v.high)
 		}
 	}
 	for _, db := range d.DoubleBonds {

@@ -28,6 +28,9 @@ func (g *graph) bondThrough(ring []int, f *film, x molecule.Geometry) int {
 		inRing[i] = true
 	}
 	for b, bond := range g.Bonds {
+		if len(ring) > tightRing && (g.Atoms[bond.A].Element == hydrogen || g.Atoms[bond.B].Element == hydrogen) {
+			continue
+		}
 		if !inRing[bond.A] && !inRing[bond.B] && f.cutBy(x.At(bond.A), x.At(bond.B)) {
 			return b
 		}
@@ -40,6 +43,10 @@ type film struct {
 	triangles [][3][3]float64
 	low, high [3]float64 // box
 }
+
+// tightRing is the size of the largest ring that has no room for a hydrogen; a hydrogen that points into a larger one is not
+// locked there.
+const tightRing = 10
 
 const settling = 40 // passes of averaging; more change no verdict on the test set
 

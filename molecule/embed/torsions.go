@@ -192,13 +192,16 @@ func (c *constraints) boundCumulene(chain []int, angle func(i, j, k int) [2]floa
 				c.volumes = append(c.volumes, planarVolume(i, j, k, l))
 			}
 			if c.hops[i][l] > 3 {
-				q := quad{c.bondLength(i, j), axis, c.bondLength(k, l), angle(i, j, chain[1]), angle(chain[last-1], k, l)}
+				// over a long axis the sides differ less than the slack of the angles, so these are held at their middle
+				q := quad{c.bondLength(i, j), axis, c.bondLength(k, l), middle(angle(i, j, chain[1])), middle(angle(chain[last-1], k, l))}
 				near, distant := q.range14(low, high)
 				c.set(i, l, near, distant)
 			}
 		}
 	}
 }
+
+func middle(r [2]float64) [2]float64 { return [2]float64{(r[0] + r[1]) / 2, (r[0] + r[1]) / 2} }
 
 // quad is a chain i–j–k–l: its three lengths in Å and the ranges of its two angles in radians.
 type quad struct {

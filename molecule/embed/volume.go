@@ -18,7 +18,7 @@ const (
 	planarScale = 3.0 // Å³, about six times the volume at a tetrahedral carbon bearing one hydrogen
 	// centerShare of the volume of the reference tetrahedron is asked of a stereocentre. Strained centres are flatter than
 	// the reference, never inverted.
-	centerShare = 0.5
+	centerShare = 0.4
 )
 
 func planarVolume(a, b, c, d int) volume {
@@ -26,22 +26,35 @@ func planarVolume(a, b, c, d int) volume {
 }
 
 // fixCenters asks for the right sign of the volume at every specified stereocentre. Seen from the first neighbour the others
-// run clockwise exactly if the volume is positive; the atom itself stands for a lone pair, which lies on the same side.
+// run clockwise exactly if the volume is positive; the atom itself stands for a lone pair, which lies on the same side. At
+// four neighbours the atom has to lie inside their tetrahedron: put in the place of any of them it keeps the sign.
 func (c *constraints) fixCenters() {
 	for _, center := range c.Centers {
 		atoms := center.Neighbors
+		inside := len(c.Neighbors(center.Atom)) == 4
 		for i, a := range atoms {
 			if a == molecule.LonePair {
 				atoms[i] = center.Atom
 			}
 		}
-		ideal := c.referenceVolume(atoms)
-		v := volume{atoms: atoms, low: centerShare * ideal, high: math.Inf(1), scale: ideal}
-		if !center.Clockwise {
-			v.low, v.high = math.Inf(-1), -centerShare*ideal
+		c.fixCenter(atoms, center.Clockwise)
+		for i := range atoms {
+			if inside {
+				part := atoms
+				part[i] = center.Atom
+				c.fixCenter(part, center.Clockwise)
+			}
 		}
-		c.volumes = append(c.volumes, v)
 	}
+}
+
+func (c *constraints) fixCenter(atoms [4]int, positive bool) {
+	reference := c.referenceVolume(atoms)
+	v := volume{atoms: atoms, low: centerShare * reference, high: math.Inf(1), scale: math.Max(reference, planarScale)}
+	if !positive {
+		v.low, v.high = math.Inf(-1), -centerShare*reference
+	}
+	c.volumes = append(c.volumes, v)
 }
 
 // referenceVolume returns six times the volume of the tetrahedron whose edges lie in the middle of the bounds.
