@@ -14,7 +14,6 @@ import (
 // assembly gathers what the terms of one molecule are made from.
 type assembly struct {
 	*MMFF94
-	options  Options
 	molecule *molecule.Molecule
 	tables   *parameters.Tables
 	typed    *typing.Assignment
@@ -33,8 +32,8 @@ func assemble(m *molecule.Molecule, o Options) (*MMFF94, error) {
 		return nil, unsupported(m, untyped.Atom, untyped.Reason)
 	}
 	a := &assembly{
-		MMFF94:  &MMFF94{atoms: len(m.Atoms), types: typed.Types, angleReference: map[[3]int]float64{}},
-		options: o, molecule: m, tables: tables, typed: typed,
+		MMFF94:   &MMFF94{options: o, atoms: len(m.Atoms), types: typed.Types, angleReference: map[[3]int]float64{}},
+		molecule: m, tables: tables, typed: typed,
 	}
 	for _, step := range []func() error{a.addBonds, a.addCharges, a.addAngles, a.addOutOfPlanes, a.addTorsions, a.addPairs} {
 		if err := step(); err != nil {
@@ -115,10 +114,6 @@ func (a *assembly) addOutOfPlanes() error {
 }
 
 func (a *assembly) addPairs() error {
-	dielectric := a.options.Dielectric
-	if dielectric == 0 {
-		dielectric = 1
-	}
 	a.nonbonded.distanceDependent = a.options.DistanceDependent
 	separation := make([]int, a.atoms) // of each atom from the current one; 0 beyond three bonds
 	for i := range a.atoms {
@@ -128,7 +123,7 @@ func (a *assembly) addPairs() error {
 				continue
 			}
 			distance, depth := a.tables.VanDerWaals(a.types[i], a.types[j])
-			charge := coulomb / dielectric * a.charges[i] * a.charges[j]
+			charge := coulomb / a.options.Dielectric * a.charges[i] * a.charges[j]
 			if separation[j] == 3 {
 				charge *= oneFour
 			}

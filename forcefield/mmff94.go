@@ -11,9 +11,12 @@ import (
 
 // Options choose between the published variants of MMFF94. The zero value is MMFF94 in vacuum.
 type Options struct {
-	Static            bool    // MMFF94s: planar delocalised nitrogen (J. Comput. Chem. 20, 720 (1999))
-	Dielectric        float64 // dielectric constant of the electrostatic term; 0 stands for 1
-	DistanceDependent bool    // dielectric grows with distance: q·q/(R+δ)² instead of q·q/(R+δ)
+	// Static chooses MMFF94s, in which delocalised nitrogen is closer to planar (J. Comput. Chem. 20, 720 (1999)).
+	Static bool `json:"static"`
+	// Dielectric is the dielectric constant D of the electrostatic term; 0 stands for 1.
+	Dielectric float64 `json:"dielectric"`
+	// DistanceDependent makes the dielectric grow with distance: q·q/D(R+δ)² instead of q·q/D(R+δ).
+	DistanceDependent bool `json:"distance_dependent"`
 }
 
 // Terms are the parts of the energy in kcal/mol.
@@ -43,6 +46,7 @@ type Empirical struct {
 // MMFF94 is the force field of one molecule, prepared for evaluation. It never changes and may be used by any number of
 // goroutines.
 type MMFF94 struct {
+	options        Options
 	atoms          int
 	types          []int
 	charges        []float64
@@ -67,8 +71,14 @@ func NewMMFF94(m *molecule.Molecule, o Options) (*MMFF94, error) {
 	if !(o.Dielectric >= 0) || math.IsInf(o.Dielectric, 1) {
 		return nil, fmt.Errorf("dielectric constant %g: it must be positive", o.Dielectric)
 	}
+	if o.Dielectric == 0 {
+		o.Dielectric = 1
+	}
 	return assemble(m, o)
 }
+
+// Options returns the options in use, with the dielectric constant filled in.
+func (f *MMFF94) Options() Options { return f.options }
 
 // Atoms returns the number of atoms.
 func (f *MMFF94) Atoms() int { return f.atoms }
