@@ -25,12 +25,18 @@ type descent struct {
 
 // limitedSteps shortens the first step along each direction so that no atom moves farther than the limit.
 type limitedSteps struct {
-	lbfgs *optimize.LBFGS
-	limit float64
+	lbfgs  *optimize.LBFGS
+	limit  float64
+	metric *metric   // nil if the directions are Cartesian
+	dx     []float64 // workspace
 }
 
 func (l *limitedSteps) InitDirection(loc *optimize.Location, dir []float64) float64 {
-	return l.shorten(l.lbfgs.InitDirection(loc, dir), loc, dir)
+	step := l.lbfgs.InitDirection(loc, dir)
+	if l.metric != nil {
+		step = 1
+	}
+	return l.shorten(step, loc, dir)
 }
 
 func (l *limitedSteps) NextDirection(loc *optimize.Location, dir []float64) float64 {
@@ -38,24 +44,32 @@ func (l *limitedSteps) NextDirection(loc *optimize.Location, dir []float64) floa
 }
 
 func (l *limitedSteps) shorten(step float64, loc *optimize.Location, dir []float64) float64 {
-	length := reach(dir)
+	length := l.reach(dir)
 	if !isFinite(length) { // the history has become useless
 		copy(dir, loc.Gradient)
 		floats.Scale(-1, dir)
-		length = reach(dir)
+		length = l.reach(dir)
 	}
 	return min(step, l.limit/length)
 }
 
-// descend follows L-BFGS from the best point until its rms gradient is at or below target. It returns errStalled, the error of ctx,
-// or a NotConvergedError if the budget is spent.
-func (q *Quencher) descend(ctx context.Context, target float64) error {
+func (l *limitedSteps) reach(dir []float64) float64 {
+	if l.metric == nil {
+		return reach(dir)
+	}
+	l.metric.displacement(l.dx, dir)
+	return reach(l.dx)
+}
+
+// descend follows L-BFGS from the best point until its rms gradient is at or below target, in the coordinates of the metric unless
+// that is nil. It returns errStalled, the error of ctx, or a NotConvergedError if the budget is spent.
+func (q *Quencher) descend(ctx context.Context, target float64, m *metric) error {
 	limit := q.settings.MaxStep
 	for range restarts {
 		if q.at.rms() <= target {
 			return nil
 		}
-		err := q.descendOnce(ctx, target, limit)
+		err := q.descendOnce(ctx, target, limit, m)
 		if !errors.Is(err, errStalled) {
 			return err
 		}
@@ -65,14 +79,19 @@ func (q *Quencher) descend(ctx context.Context, target float64) error {
 }
 
 // descendOnce returns errStalled if a line search fails or meets an energy that is not finite.
-func (q *Quencher) descendOnce(ctx context.Context, target, limit float64) error {
+func (q *Quencher) descendOnce(ctx context.Context, target, limit float64, m *metric) error {
 	d := &q.descent
 	// A new LBFGS: gonum does not clear all of the history of the last run.
-	d.limited = limitedSteps{lbfgs: &optimize.LBFGS{Store: 15}, limit: limit}
+	d.limited = limitedSteps{lbfgs: &optimize.LBFGS{Store: 15}, limit: limit, metric: m, dx: q.newton.step.RawVector().Data}
 	d.search = optimize.LinesearchMethod{NextDirectioner: &d.limited, Linesearcher: &optimize.MoreThuente{}}
 	trial := &q.trial
 	trial.copyFrom(&q.at)
 	d.loc = optimize.Location{X: trial.x, F: trial.energy, Gradient: trial.grad}
+	if m != nil {
+		m.moveOrigin(trial.x)
+		m.gradient(m.grad, trial.grad)
+		d.loc.X, d.loc.Gradient = m.y, m.grad
+	}
 	operation, err := d.search.Init(&d.loc)
 	for err == nil {
 		switch operation {
@@ -85,9 +104,15 @@ func (q *Quencher) descendOnce(ctx context.Context, target, limit float64) error
 			if err := q.mayGoOn(ctx); err != nil {
 				return err
 			}
+			if m != nil {
+				m.position(trial.x, m.y)
+			}
 			q.evaluate(trial)
 			if !trial.finite() {
 				return errStalled
+			}
+			if m != nil {
+				m.gradient(m.grad, trial.grad)
 			}
 			if trial.energy < q.at.energy {
 				q.at.copyFrom(trial)

@@ -114,7 +114,7 @@ func (q *Quencher) Crude(ctx context.Context, x []float64) (Result, error) {
 	if err := q.start(x); err != nil {
 		return Result{}, err
 	}
-	err := q.descend(ctx, q.settings.CrudeRMS)
+	err := q.descend(ctx, q.settings.CrudeRMS, nil)
 	if errors.Is(err, errStalled) {
 		err = nil
 	}

@@ -16,16 +16,11 @@ const (
 	push = 0.2
 )
 
-// leaveSaddle takes the best point out of a region where the Hessian, which has been diagonalised, has a negative eigenvalue. On a
-// slope L-BFGS goes on. Near a saddle the geometry is pushed along the most negative mode to both sides, L-BFGS relaxes both, and the
+// leaveSaddle takes the best point out of a region where the Hessian, which has been diagonalised, has a negative eigenvalue and the
+// gradient is small: the geometry is pushed along the most negative mode to both sides, L-BFGS relaxes both, and the
 // lower one is kept; if both are equal, as at a saddle between mirror images, the one to which the first large component of the mode
 // is positive.
 func (q *Quencher) leaveSaddle(ctx context.Context) error {
-	if rms := q.at.rms(); rms > saddleRMS {
-		if err := q.descend(ctx, max(rms/10, saddleRMS)); !errors.Is(err, errStalled) {
-			return err
-		}
-	}
 	mode := q.lowestMode()
 	// Tight enough for what is left of the push in stiff modes to be small beside what the soft one gains.
 	target := math.Sqrt(-q.newton.lowest) * push / 2
@@ -59,7 +54,7 @@ func (q *Quencher) relaxPushed(ctx context.Context, t float64, mode []float64, t
 		return nil
 	}
 	q.accept()
-	if err := q.descend(ctx, target); !errors.Is(err, errStalled) {
+	if err := q.descend(ctx, target, nil); !errors.Is(err, errStalled) {
 		return err
 	}
 	return nil
