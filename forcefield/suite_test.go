@@ -71,7 +71,8 @@ func readSuite(t *testing.T) []suiteRecord {
 }
 
 // TestFullValidationSuite compares types, charges and energies with the published MMFF94 validation suite (November 1998
-// revision; T. A. Halgren, J. Comput. Chem. 17, 490 (1996)) in both of its drawings.
+// revision; T. A. Halgren, J. Comput. Chem. 17, 490 (1996)) in both of its drawings and with the Kekulé structure of each
+// six-ring flipped.
 func TestFullValidationSuite(t *testing.T) {
 	records := readSuite(t)
 	require.Len(t, records, 618)
@@ -79,6 +80,12 @@ func TestFullValidationSuite(t *testing.T) {
 		t.Run(r.Name, func(t *testing.T) {
 			requirePublished(t, r.in(r.Dative))
 			requirePublished(t, r.in(r.Hypervalent))
+			m := r.in(r.Dative).molecule(t)
+			for _, ring := range alternateSixRings(m) {
+				other := r.in(r.Dative)
+				other.bonds = flipped(t, m, ring).Bonds
+				requirePublished(t, other)
+			}
 		})
 	}
 }

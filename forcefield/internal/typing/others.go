@@ -61,8 +61,10 @@ func (t *typer) sulfur(i int) string {
 		switch {
 		case oxides > 1 && t.has(i, 2, 6):
 			return "=SO2"
-		case oxides > 1:
+		case oxides > 1 && t.valence(i)+t.charge[i] == 4:
 			return "SO2M"
+		case oxides > 1:
+			return ""
 		case oxides == 1 && t.terminals(i, 16) > 0:
 			return "SSOM"
 		case oxides == 1:
@@ -82,7 +84,7 @@ func (t *typer) sulfur(i int) string {
 	switch e := t.element[n.Atom]; {
 	case e == 15:
 		return "S-P"
-	case e == 6 && t.terminals(n.Atom, 16) == 2:
+	case t.symbols[n.Atom] == "CS2M":
 		return "S2CM"
 	case e == 6 && t.order[n.Bond] == 2:
 		return "S=C"

@@ -78,7 +78,7 @@ func (t *typer) bridgingOxygen(i int) string {
 
 func (t *typer) oxygenOnCarbon(carbon, order int) string {
 	switch {
-	case t.terminals(carbon, 8) == 2:
+	case t.symbols[carbon] == "CO2M":
 		return "O2CM"
 	case order == 1 && t.degree(carbon) == 4:
 		return "OM"
