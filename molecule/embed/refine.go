@@ -26,18 +26,17 @@ var stages = []stage{
 // settled is the gradient (error per Å) below which a stage has converged.
 const settled = 1e-3
 
-// refine minimises the error function from 4N coordinates and returns the geometry in three dimensions.
-func (d *draw) refine(ctx context.Context, x []float64) (molecule.Geometry, error) {
+// refine minimises the error function from 4N coordinates and returns the geometry in three dimensions with its error.
+func (d *draw) refine(ctx context.Context, x []float64) (g molecule.Geometry, violation float64, err error) {
 	for _, s := range stages {
 		if s.dimensions == 3 {
 			x = dropFourth(x)
 		}
-		var err error
-		if x, err = d.minimise(ctx, s, x); err != nil {
-			return nil, err
+		if x, violation, err = d.minimise(ctx, s, x); err != nil {
+			return nil, 0, err
 		}
 	}
-	return x, nil
+	return x, violation, nil
 }
 
 func dropFourth(x []float64) []float64 {
@@ -48,7 +47,7 @@ func dropFourth(x []float64) []float64 {
 	return flat
 }
 
-func (d *draw) minimise(ctx context.Context, s stage, x []float64) ([]float64, error) {
+func (d *draw) minimise(ctx context.Context, s stage, x []float64) (at []float64, value float64, err error) {
 	e := errorFunction{draw: d, stage: s, last: make([]float64, len(x)), grad: make([]float64, len(x))}
 	problem := optimize.Problem{
 		Func: e.value,
@@ -67,10 +66,10 @@ func (d *draw) minimise(ctx context.Context, s stage, x []float64) ([]float64, e
 	}
 	result, err := optimize.Minimize(problem, x, settings, &optimize.LBFGS{})
 	if ctx.Err() != nil {
-		return nil, ctx.Err()
+		return nil, 0, ctx.Err()
 	}
 	if result == nil {
-		return nil, err
+		return nil, 0, err
 	}
-	return result.X, nil // a line search that stalls has still lowered the error; the checks judge what it reached
+	return result.X, result.F, nil // a line search that stalls has still lowered the error; the checks judge what it reached
 }
