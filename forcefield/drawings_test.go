@@ -8,6 +8,7 @@ import (
 	"github.com/stretchr/testify/require"
 	"pgregory.net/rapid"
 
+	"tarn/forcefield/internal/sketch"
 	"tarn/molecule"
 )
 
@@ -61,7 +62,7 @@ func TestDrawingsOfOneMolecule(t *testing.T) {
 		t.Run(c.name, func(t *testing.T) {
 			var first *MMFF94
 			for n, d := range c.drawings {
-				m := sketch(t, d[0], d[1])
+				m := sketch.Molecule(t, d[0], d[1])
 				f, err := NewMMFF94(m, Options{})
 				require.NoError(t, err, "drawing %d", n+1)
 				require.Equal(t, c.types, f.AtomTypes()[:len(c.types)], "drawing %d", n+1)

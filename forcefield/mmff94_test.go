@@ -8,6 +8,8 @@ import (
 	"testing"
 
 	"github.com/stretchr/testify/require"
+
+	"tarn/forcefield/internal/sketch"
 )
 
 // TestEmpiricalRules lists the parameters that the published list of the validation suite marks as made by a rule.
@@ -66,7 +68,7 @@ func TestTermsAddUp(t *testing.T) {
 // TestDielectric recomputes the electrostatic energy of two separate ions, (R + 0.05 Å) apart in the formula of J. Comput.
 // Chem. 17, 520 (1996), eq. 14.
 func TestDielectric(t *testing.T) {
-	ions := sketch(t, "Na+ Cl-", "")
+	ions := sketch.Molecule(t, "Na+ Cl-", "")
 	x := []float64{0, 0, 0, 0, 3.95, 0}
 	for _, c := range []struct {
 		options  Options
@@ -126,7 +128,7 @@ func TestStaticVariantChanges(t *testing.T) {
 
 // TestReferences reads reference geometry as distance geometry will: listed values of J. Comput. Chem. 17, 490 (1996).
 func TestReferences(t *testing.T) {
-	f, err := NewMMFF94(sketch(t, "CH3 C N", "1-2 2#3"), Options{})
+	f, err := NewMMFF94(sketch.Molecule(t, "CH3 C N", "1-2 2#3"), Options{})
 	require.NoError(t, err)
 	require.Equal(t, 1.459, f.ReferenceBond(0, 1))
 	require.Equal(t, 1.160, f.ReferenceBond(2, 1))

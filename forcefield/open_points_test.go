@@ -4,6 +4,8 @@ import (
 	"testing"
 
 	"github.com/stretchr/testify/require"
+
+	"tarn/forcefield/internal/sketch"
 )
 
 // TestOpenPoints holds the decisions on environments that neither the papers nor the validation suite settle;
@@ -41,7 +43,7 @@ func TestOpenPoints(t *testing.T) {
 		{"sulfur dichloride", "S Cl Cl", "1-2 1-3", []int{15, 12, 12}, 1, 2, 2.015, 0.03},
 	} {
 		t.Run(c.name, func(t *testing.T) {
-			f, err := NewMMFF94(sketch(t, c.atoms, c.bonds), Options{})
+			f, err := NewMMFF94(sketch.Molecule(t, c.atoms, c.bonds), Options{})
 			require.NoError(t, err)
 			require.Equal(t, c.types, f.AtomTypes()[:len(c.types)])
 			require.InDelta(t, c.length, f.ReferenceBond(c.i-1, c.j-1), c.tolerance)
@@ -53,7 +55,7 @@ func TestOpenPoints(t *testing.T) {
 // TestRefusedHydrogens lists parents for which no hydrogen type is known.
 func TestRefusedHydrogens(t *testing.T) {
 	for _, halide := range []string{"FH", "ClH", "BrH", "IH"} {
-		_, err := NewMMFF94(sketch(t, halide, ""), Options{})
+		_, err := NewMMFF94(sketch.Molecule(t, halide, ""), Options{})
 		require.ErrorContains(t, err, "no type for hydrogen", halide)
 	}
 }

@@ -10,6 +10,7 @@ import (
 
 	"github.com/stretchr/testify/require"
 
+	"tarn/forcefield/internal/sketch"
 	"tarn/molecule"
 )
 
@@ -82,7 +83,7 @@ func (p *publishedMolecule) read(fields []string) error {
 		return err
 	case "bonds":
 		for _, f := range fields[1:] {
-			b, err := readBond(f)
+			b, err := sketch.Bond(f)
 			if err != nil {
 				return err
 			}
@@ -93,16 +94,6 @@ func (p *publishedMolecule) read(fields []string) error {
 		return p.readOther(fields[1:])
 	}
 	return errors.New("unknown line")
-}
-
-func readBond(f string) (molecule.Bond, error) {
-	at := strings.IndexAny(f, "-=#")
-	if at < 0 {
-		return molecule.Bond{}, errors.New("no bond")
-	}
-	var a, b int
-	_, err := fmt.Sscan(f[:at]+" "+f[at+1:], &a, &b)
-	return molecule.Bond{A: a - 1, B: b - 1, Order: 1 + strings.Index("-=#", f[at:at+1])}, err
 }
 
 // readOther reads the second drawing: charges and bonds that differ from the first.
@@ -119,7 +110,7 @@ func (p *publishedMolecule) readOther(fields []string) error {
 			other.charges[atom-1] = charge
 			continue
 		}
-		b, err := readBond(f)
+		b, err := sketch.Bond(f)
 		if err != nil {
 			return err
 		}

@@ -6,6 +6,7 @@ import (
 
 	"github.com/stretchr/testify/require"
 
+	"tarn/forcefield/internal/sketch"
 	"tarn/molecule"
 )
 
@@ -50,7 +51,7 @@ func TestRefusals(t *testing.T) {
 		{"quadruple bond", "C C", "1-2", 1, "C", "valence 1"},
 	} {
 		t.Run(c.name, func(t *testing.T) {
-			_, err := NewMMFF94(sketch(t, c.atoms, c.bonds), Options{})
+			_, err := NewMMFF94(sketch.Molecule(t, c.atoms, c.bonds), Options{})
 			var refused *UnsupportedError
 			require.ErrorAs(t, err, &refused)
 			require.Equal(t, c.atom-1, refused.Atom, refused.Error())
@@ -62,7 +63,7 @@ func TestRefusals(t *testing.T) {
 }
 
 func TestRefusalOfRadicals(t *testing.T) {
-	m := sketch(t, "CH3", "")
+	m := sketch.Molecule(t, "CH3", "")
 	m.Atoms[0].Radical = 1
 	_, err := NewMMFF94(m, Options{})
 	require.ErrorContains(t, err, "atom 1 (C, bonded to -H2, -H3, -H4): MMFF94 does not cover radicals (1 unpaired electrons)")
@@ -70,7 +71,7 @@ func TestRefusalOfRadicals(t *testing.T) {
 
 // TestMissingParameters needs a torsion about a bond from chlorine to oxygen, for which neither table nor rule exists.
 func TestMissingParameters(t *testing.T) {
-	_, err := NewMMFF94(sketch(t, "Cl O O O OH", "1=2 1=3 1=4 1-5"), Options{})
+	_, err := NewMMFF94(sketch.Molecule(t, "Cl O O O OH", "1=2 1=3 1=4 1-5"), Options{})
 	var refused *UnsupportedError
 	require.ErrorAs(t, err, &refused)
 	require.ErrorContains(t, err, "no torsion parameter for atoms")
@@ -83,7 +84,7 @@ func TestUnusableArguments(t *testing.T) {
 	_, err = NewMMFF94(empty, Options{})
 	require.ErrorContains(t, err, "no atoms")
 	for _, d := range []float64{-1, math.NaN(), math.Inf(1)} {
-		_, err = NewMMFF94(sketch(t, "CH4", ""), Options{Dielectric: d})
+		_, err = NewMMFF94(sketch.Molecule(t, "CH4", ""), Options{Dielectric: d})
 		require.ErrorContains(t, err, "dielectric constant")
 	}
 	for _, n := range []int{-1, 0, 1} {
