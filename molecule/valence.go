@@ -85,6 +85,10 @@ func impliedHydrogens(a Atom, sum int) int {
 	return 0
 }
 
+// ImpliedHydrogens returns how many hydrogens a neutral atom written without brackets has in SMILES when its bond orders
+// add up to sum.
+func ImpliedHydrogens(e Element, sum int) int { return impliedHydrogens(Atom{Element: e}, sum) }
+
 // missingElectrons returns the number of unpaired electrons that stated hydrogens leave on a light non-metal ([CH3]: 1).
 func missingElectrons(a Atom, sum int) int {
 	switch a.Element {
