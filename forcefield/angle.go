@@ -33,7 +33,7 @@ func angleEnergy(angles []angle, x, grad []float64) (bend, stretchBend float64) 
 		if grad == nil {
 			continue
 		}
-		slope := (a.stiffness*d*(1+1.5*cubicBend*d) + pull) / math.Max(sin, smallestSin)
+		slope := (a.stiffness*d*(1+1.5*cubicBend*d) + pull) / max(sin, smallestSin)
 		gi := u.times(slope*cos*iu+a.first*d).combine(1, v, -slope*iu)
 		gk := v.times(slope*cos*iv+a.second*d).combine(1, u, -slope*iv)
 		add(grad, a.i, gi)
@@ -113,7 +113,7 @@ func linearAngleHessian(angles []linearAngle, x, h []float64) {
 		scale := squares.power(-0.5)
 		uv := u.dot(&v)
 		cos := uv.times(&scale)
-		energy := cos.combine(a.stiffness, &cos, 0)
+		energy := cos.compose(a.stiffness*cos.value, a.stiffness, 0)
 		energy.addTo(h, len(x), a.j, a.i, a.k)
 	}
 }

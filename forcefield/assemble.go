@@ -4,7 +4,6 @@ import (
 	"errors"
 	"fmt"
 	"math"
-	"slices"
 
 	"tarn/forcefield/internal/parameters"
 	"tarn/forcefield/internal/typing"
@@ -17,8 +16,8 @@ type assembly struct {
 	molecule *molecule.Molecule
 	tables   *parameters.Tables
 	typed    *typing.Assignment
-	classes  []int             // of the bonds
-	bonds    []parameters.Bond // reference lengths and stiffness, by bond
+	classes  []int     // of the bonds
+	lengths  []float64 // reference lengths of the bonds, Å
 }
 
 func assemble(m *molecule.Molecule, o Options) (*MMFF94, error) {
@@ -35,11 +34,14 @@ func assemble(m *molecule.Molecule, o Options) (*MMFF94, error) {
 		MMFF94:   &MMFF94{options: o, atoms: len(m.Atoms), types: typed.Types, angleReference: map[[3]int]float64{}},
 		molecule: m, tables: tables, typed: typed,
 	}
-	for _, step := range []func() error{a.addBonds, a.addCharges, a.addAngles, a.addOutOfPlanes, a.addTorsions, a.addPairs} {
-		if err := step(); err != nil {
+	for _, add := range []func() error{a.addBonds, a.addAngles, a.addTorsions} {
+		if err := add(); err != nil {
 			return nil, err
 		}
 	}
+	a.addOutOfPlanes()
+	a.addCharges()
+	a.addPairs()
 	return a.MMFF94, nil
 }
 
@@ -65,15 +67,15 @@ func (a *assembly) addBonds() error {
 			}
 			a.report("bond", fmt.Sprintf("length %.4f Å, stiffness %.3f md/Å", p.Length, p.Stiffness), b.A, b.B)
 		}
-		a.bonds = append(a.bonds, p)
-		a.MMFF94.bonds = append(a.MMFF94.bonds, bond{offset(b.A), offset(b.B), p.Length, millidyne * p.Stiffness})
+		a.lengths = append(a.lengths, p.Length)
+		a.bonds = append(a.bonds, bond{offset(b.A), offset(b.B), p.Length, millidyne * p.Stiffness})
 	}
 	return nil
 }
 
 // addCharges spreads formal charges and bond charge increments. Source: J. Comput. Chem. 17, 616 (1996), eq. 15, with the
 // factor of the giving atom in both sums (the printed equation misplaces it).
-func (a *assembly) addCharges() error {
+func (a *assembly) addCharges() {
 	formal := a.typed.FormalCharges
 	a.charges = make([]float64, a.atoms)
 	for i, q := range formal {
@@ -92,10 +94,9 @@ func (a *assembly) addCharges() error {
 		a.charges[b.A] -= gain
 		a.charges[b.B] += gain
 	}
-	return nil
 }
 
-func (a *assembly) addOutOfPlanes() error {
+func (a *assembly) addOutOfPlanes() {
 	for j := range a.molecule.Atoms {
 		around := a.molecule.Neighbors(j)
 		if len(around) != 3 {
@@ -110,11 +111,11 @@ func (a *assembly) addOutOfPlanes() error {
 			a.outOfPlanes = append(a.outOfPlanes, outOfPlane{offset(j), outer, millidyne * stiffness})
 		}
 	}
-	return nil
 }
 
-func (a *assembly) addPairs() error {
+func (a *assembly) addPairs() {
 	a.nonbonded.distanceDependent = a.options.DistanceDependent
+	a.nonbonded.pairs = make([]pair, 0, a.atoms*(a.atoms-1)/2)
 	separation := make([]int, a.atoms) // of each atom from the current one; 0 beyond three bonds
 	for i := range a.atoms {
 		near := a.nearby(i, separation)
@@ -134,8 +135,6 @@ func (a *assembly) addPairs() error {
 			separation[j] = 0
 		}
 	}
-	a.nonbonded.pairs = slices.Clip(a.nonbonded.pairs)
-	return nil
 }
 
 // nearby returns the atoms within three bonds of i and writes their separation.

@@ -73,7 +73,7 @@ func (a *assembly) addAngle(i, j, k, ij, jk int) error {
 	a.angles = append(a.angles, angle{
 		i: offset(i), j: offset(j), k: offset(k), reference: radians(p.Degrees), stiffness: millidyne * p.Stiffness,
 		first: millidyne * coupling.First, second: millidyne * coupling.Second,
-		firstLength: a.bonds[ij].Length, secondLength: a.bonds[jk].Length,
+		firstLength: a.lengths[ij], secondLength: a.lengths[jk],
 	})
 	return nil
 }
@@ -89,7 +89,7 @@ func (a *assembly) angleParameters(class, i, j, k, ij, jk int) (parameters.Angle
 		p.Degrees, source = a.tables.RuleReferenceAngle(class, a.types[j]), "from the rule"
 	}
 	var err error
-	p.Stiffness, err = a.tables.RuleAngleStiffness(class, a.types[i], a.types[j], a.types[k], p.Degrees, a.bonds[ij].Length, a.bonds[jk].Length)
+	p.Stiffness, err = a.tables.RuleAngleStiffness(class, a.types[i], a.types[j], a.types[k], p.Degrees, a.lengths[ij], a.lengths[jk])
 	if err != nil {
 		return p, a.missing("angle", err, i, j, k)
 	}

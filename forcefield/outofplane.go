@@ -45,9 +45,9 @@ func wilson(stiffness, triple float64, u, v, w vector, iu, iv, iw float64, gu, g
 		return 0
 	}
 	inverse := 1 / math.Sqrt(square)
-	sin := math.Max(-1, math.Min(1, triple*inverse))
-	cos := math.Max(math.Sqrt(1-sin*sin), smallestSin)
-	chi := math.Asin(sin)
+	sin := max(-1, min(1, triple*inverse))
+	cos := max(math.Sqrt(1-sin*sin), smallestSin)
+	chi := math.Atan(sin / cos)
 	slope := stiffness * chi
 	toPlane, along := slope*inverse/cos, slope*sin/cos
 	*gw = gw.plus(normal.combine(toPlane*iw, w, -along*iw))
@@ -77,9 +77,9 @@ func outOfPlaneHessian(centers []outOfPlane, x, h []float64) {
 			scale = scale.power(-0.5)
 			triple := normal.dot(w)
 			sin := triple.times(&scale)
-			s := math.Max(-1, math.Min(1, sin.value))
-			cos := math.Max(math.Sqrt(1-s*s), smallestSin)
-			chi := math.Asin(s)
+			s := max(-1, min(1, sin.value))
+			cos := max(math.Sqrt(1-s*s), smallestSin)
+			chi := math.Atan(s / cos)
 			energy := sin.compose(c.stiffness/2*chi*chi, c.stiffness*chi/cos, c.stiffness*(1+chi*s/cos)/(cos*cos))
 			energy.addTo(h, len(x), c.center, c.outer[0], c.outer[1], c.outer[2])
 		}

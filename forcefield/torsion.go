@@ -25,7 +25,8 @@ func torsionEnergy(torsions []torsion, x, grad []float64) float64 {
 		if pp < collinear || qq < collinear {
 			continue
 		}
-		inverse := 1 / math.Sqrt(pp*qq)
+		ipp, iqq := 1/pp, 1/qq
+		inverse := math.Sqrt(ipp * iqq)
 		cos := p.dot(q) * inverse
 		e, slope, _ := t.series(cos)
 		total += e
@@ -33,12 +34,12 @@ func torsionEnergy(torsions []torsion, x, grad []float64) float64 {
 			continue
 		}
 		bb := b2.dot(b2)
-		length := math.Sqrt(bb)
 		// slope is dE/dcos φ; dE/dφ = −sin φ·slope with sin φ = |b2|·b1·(b2×b3)/(|p||q|)
-		turn := -slope * bb * b1.dot(q) * inverse / length
-		gi := p.times(-turn * length / pp)
-		gl := q.times(turn * length / qq)
-		s, r := b1.dot(b2)/bb, b3.dot(b2)/bb
+		turn := -slope * bb * b1.dot(q) * inverse
+		gi := p.times(-turn * ipp)
+		gl := q.times(turn * iqq)
+		ibb := 1 / bb
+		s, r := b1.dot(b2)*ibb, b3.dot(b2)*ibb
 		add(grad, t.i, gi)
 		add(grad, t.l, gl)
 		add(grad, t.j, gi.combine(-1-s, gl, r))

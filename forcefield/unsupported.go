@@ -23,7 +23,7 @@ func unsupported(m *molecule.Molecule, atom int, missing string) error {
 	return &UnsupportedError{Atom: atom, Element: m.Atoms[atom].Element, Environment: environment(m, atom), Missing: missing}
 }
 
-// environment describes the charge and the bonds of an atom, for example "charge +1; bonds: C-2, O=3, H-9".
+// environment describes the charge and the bonds of an atom, for example "charge +1, bonded to -C2, =O3, -H9".
 func environment(m *molecule.Molecule, atom int) string {
 	var parts []string
 	for _, n := range m.Neighbors(atom) {

@@ -59,6 +59,7 @@ type Tables struct {
 	outOfPlanes   map[key]float64
 	torsions      map[key]Torsion
 	chargeOfBonds map[key]float64
+	contacts      []contact // of pairs of types
 }
 
 // key packs the class of an interaction and up to four types.
@@ -155,6 +156,7 @@ func read(planar bool) (*Tables, error) {
 			return nil, err
 		}
 	}
+	t.tabulateContacts()
 	if !planar {
 		return t, nil
 	}
