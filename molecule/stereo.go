@@ -64,5 +64,9 @@ func (m *Molecule) withStereo(centers []Center, doubleBonds []DoubleBond) *Molec
 		Name: m.Name, Atoms: m.Atoms, Bonds: m.Bonds, Centers: centers, DoubleBonds: doubleBonds, neighbors: m.neighbors,
 	}
 	changed.perception = perceptionOf(changed)
+	if m.standard() == m { // none of this depends on descriptors
+		changed.standard = func() *Molecule { return changed }
+		changed.rings, changed.aromaticity, changed.skeleton, changed.classes = m.rings, m.aromaticity, m.skeleton, m.classes
+	}
 	return changed
 }

@@ -8,8 +8,8 @@ import (
 // stereoPerception is what is known of the stereochemistry of a molecule.
 type stereoPerception struct {
 	public     Stereo
-	candidates []candidate     // those that remained
-	opposite   []bool          // configuration relative to the unit, parallel to candidates
+	candidates []candidate // those that remained
+	opposite   []bool      // configuration relative to the unit, parallel to candidates
 	identity   []candidate // those whose descriptors make this stereoisomer differ from others
 }
 
