@@ -20,7 +20,7 @@ const usualSide = 0.9
 
 // boundConjugation keeps the bond between a carbonyl carbon and a planar nitrogen or an ester oxygen flat outside small
 // rings, and records the choice between its two sides.
-func (c *constraints) boundConjugation(b int, angle func(i, j, k int) [2]float64) {
+func (c *constraints) boundConjugation(b int, slack float64, angle func(i, j, k int) [2]float64) {
 	if c.Bonds[b].Order != 1 || c.aromaticBond[b] || (c.bondRing[b] > 0 && c.bondRing[b] <= smallRing) {
 		return
 	}
@@ -36,7 +36,7 @@ func (c *constraints) boundConjugation(b int, angle func(i, j, k int) [2]float64
 	if !amide && !ester {
 		return
 	}
-	c.flatten(j, k)
+	c.flatten(j, k, planarSlack*slack*slack)
 	oxo, alkyl := c.doublyBonded(j), c.substituent(k, j)
 	if alkyl < 0 || c.Atoms[oxo].Element == nitrogen {
 		return

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"math"
 	"math/rand/v2"
+	"sync"
 
 	"tarn/molecule"
 )
@@ -38,8 +39,8 @@ func Embed(ctx context.Context, m *molecule.Molecule, ref Field, rng *rand.Rand)
 // Embedder draws geometries of one molecule. It may be used by any number of goroutines, each with its own generator.
 type Embedder struct {
 	graph   *graph
-	strict  *constraints // the first tries
-	lenient *constraints // wider angles and torsions, for strained cages
+	strict  *constraints        // for the first tries
+	lenient func() *constraints // wider angles and torsions, for strained cages; made when they are needed
 }
 
 // New prepares the bounds and the stereo constraints of a molecule. It returns an error if the molecule has no atoms or
@@ -55,7 +56,11 @@ func New(m *molecule.Molecule, ref Field) (*Embedder, error) {
 	if ref == nil {
 		ref = ideal{g}
 	}
-	return &Embedder{graph: g, strict: newConstraints(g, ref, 1), lenient: newConstraints(g, ref, 2.5)}, nil
+	return &Embedder{
+		graph:   g,
+		strict:  newConstraints(g, ref, 1),
+		lenient: sync.OnceValue(func() *constraints { return newConstraints(g, ref, lenience) }),
+	}, nil
 }
 
 // Draw returns a random geometry like [Embed]. It returns [ErrNoGeometry] after [Tries] tries, or the error of ctx.
@@ -100,13 +105,15 @@ const (
 	enough    = 3
 	// strictTries are made with bounds of the usual width.
 	strictTries = 4
+	// lenience is how many times wider the ranges of angles are for the other tries.
+	lenience = 2.5
 )
 
 // try makes one geometry and checks it. Tries alternate between the two kinds of start.
 func (e *Embedder) try(ctx context.Context, try int, rng *rand.Rand) (candidate, error) {
 	c := e.strict
 	if try >= strictTries {
-		c = e.lenient
+		c = e.lenient()
 	}
 	d := c.choose(rng)
 	start := d.metricStart

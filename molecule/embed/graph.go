@@ -22,9 +22,6 @@ const far = 5
 func newGraph(m *molecule.Molecule) *graph {
 	g := &graph{Molecule: m, rings: m.Rings()}
 	g.aromaticAtom, g.aromaticBond = m.Aromaticity()
-	if g.aromaticBond == nil {
-		g.aromaticAtom, g.aromaticBond = make([]bool, len(m.Atoms)), make([]bool, len(m.Bonds))
-	}
 	n := len(m.Atoms)
 	g.hops = make([][]uint8, n)
 	g.linear, g.planar = make([]bool, n), make([]bool, n)

@@ -1,7 +1,5 @@
 package embed
 
-import "math"
-
 // smooth tightens the bounds until they obey the triangle inequality: no upper bound exceeds a detour over a third atom, no
 // lower bound is less than what the sides of a triangle leave. Where the two cross, as in strained cages whose assumed angles
 // do not fit together, the lower bound gives way. Source: Crippen & Havel (1988), chapter 5.
@@ -27,8 +25,14 @@ func (c *constraints) smooth() {
 		for i := range n {
 			low, high := c.lower[i*n+k], c.upper[i*n+k]
 			row := c.lower[i*n : i*n+n]
-			for j := range row {
-				row[j] = math.Max(row[j], math.Max(low-highK[j], lowK[j]-high))
+			for j, l := range row {
+				if d := low - highK[j]; d > l {
+					l = d
+				}
+				if d := lowK[j] - high; d > l {
+					l = d
+				}
+				row[j] = l
 			}
 		}
 	}

@@ -37,6 +37,9 @@ func (c *constraints) boundTorsions(ref Field, slack float64) {
 	for b, bond := range c.Bonds {
 		j, k := bond.A, bond.B
 		s := c.sideOf(b)
+		if c.isFlat(b) {
+			c.flatten(j, k, c.flatSlack(b, slack))
+		}
 		for _, i := range c.others(j, k) {
 			for _, l := range c.others(k, j) {
 				if c.hops[i][l] != 3 {
@@ -45,6 +48,11 @@ func (c *constraints) boundTorsions(ref Field, slack float64) {
 				low, high := c.torsionRange(b, i, l, s, slack)
 				q := quad{c.bondLength(i, j), c.length[b], c.bondLength(k, l), angle(i, j, k), angle(j, k, l)}
 				near, distant := q.range14(low, high)
+				if s.known && low > 0 {
+					near = q.middle().distance(low)
+				} else if s.known {
+					distant = q.middle().distance(high)
+				}
 				if pair := [2]int{min(i, l), max(i, l)}; done[pair] {
 					c.narrow(i, l, near, distant)
 				} else {
@@ -53,7 +61,7 @@ func (c *constraints) boundTorsions(ref Field, slack float64) {
 				}
 			}
 		}
-		c.boundConjugation(b, angle)
+		c.boundConjugation(b, slack, angle)
 	}
 	for _, chain := range c.cumulenes() {
 		c.boundCumulene(chain, angle)
@@ -61,7 +69,7 @@ func (c *constraints) boundTorsions(ref Field, slack float64) {
 	for j := range c.n {
 		if c.planar[j] {
 			n := c.Neighbors(j)
-			c.volumes = append(c.volumes, planarVolume(j, n[0].Atom, n[1].Atom, n[2].Atom))
+			c.volumes = append(c.volumes, planarVolume(j, n[0].Atom, n[1].Atom, n[2].Atom, planarSlack*slack*slack))
 		}
 	}
 }
@@ -110,9 +118,6 @@ func (c *constraints) sideOf(b int) side {
 			}
 		}
 	}
-	if ring := c.bondRing[b]; ring == 0 || ring > 7 {
-		c.flatten(j, k)
-	}
 	return side{}
 }
 
@@ -129,13 +134,21 @@ func (c *constraints) specified(j, k int) side {
 	return side{}
 }
 
-// flatten asks for one plane at the ends of a double bond whose two geometries are both allowed.
-func (c *constraints) flatten(j, k int) {
+// flatten asks for one plane at the ends of a bond, whichever way they lie; slack is the volume in Å³ that is left to them.
+func (c *constraints) flatten(j, k int, slack float64) {
 	for _, i := range c.others(j, k) {
 		for _, l := range c.others(k, j) {
-			c.volumes = append(c.volumes, planarVolume(i, j, k, l))
+			c.volumes = append(c.volumes, planarVolume(i, j, k, l, slack))
 		}
 	}
+}
+
+// flatSlack returns the slack in Å³ of a flat bond; bonds in medium rings are twisted.
+func (c *constraints) flatSlack(b int, slack float64) float64 {
+	if c.bondRing[b] > 7 {
+		return twistedSlack
+	}
+	return planarSlack * slack * slack
 }
 
 // cumulenes returns the chains of two or more cumulated double bonds, from end to end.
@@ -189,19 +202,16 @@ func (c *constraints) boundCumulene(chain []int, angle func(i, j, k int) [2]floa
 			case s.known:
 				low = (180 - flat) * degree
 			default:
-				c.volumes = append(c.volumes, planarVolume(i, j, k, l))
+				c.volumes = append(c.volumes, planarVolume(i, j, k, l, planarSlack))
 			}
 			if c.hops[i][l] > 3 {
 				// over a long axis the sides differ less than the slack of the angles, so these are held at their middle
-				q := quad{c.bondLength(i, j), axis, c.bondLength(k, l), middle(angle(i, j, chain[1])), middle(angle(chain[last-1], k, l))}
-				near, distant := q.range14(low, high)
-				c.set(i, l, near, distant)
+				q := quad{c.bondLength(i, j), axis, c.bondLength(k, l), angle(i, j, chain[1]), angle(chain[last-1], k, l)}.middle()
+				c.set(i, l, q.distance(low), q.distance(high))
 			}
 		}
 	}
 }
-
-func middle(r [2]float64) [2]float64 { return [2]float64{(r[0] + r[1]) / 2, (r[0] + r[1]) / 2} }
 
 // quad is a chain i–j–k–l: its three lengths in Å and the ranges of its two angles in radians.
 type quad struct {
@@ -214,14 +224,23 @@ func (q quad) range14(low, high float64) (near, distant float64) {
 	near = math.Inf(1)
 	for _, j := range q.j {
 		for _, k := range q.k {
-			near = math.Min(near, q.distance(j, k, low))
-			distant = math.Max(distant, q.distance(j, k, high))
+			corner := quad{q.ij, q.jk, q.kl, [2]float64{j, j}, [2]float64{k, k}}
+			near, distant = math.Min(near, corner.distance(low)), math.Max(distant, corner.distance(high))
 		}
 	}
 	return near, distant
 }
 
-func (q quad) distance(j, k, torsion float64) float64 {
+// middle returns the same chain with its angles fixed in the middle of their ranges.
+func (q quad) middle() quad {
+	j, k := (q.j[0]+q.j[1])/2, (q.k[0]+q.k[1])/2
+	q.j, q.k = [2]float64{j, j}, [2]float64{k, k}
+	return q
+}
+
+// distance returns i–l at a torsion, with the lower ends of the ranges of the angles.
+func (q quad) distance(torsion float64) float64 {
+	j, k := q.j[0], q.k[0]
 	along := q.jk - q.ij*math.Cos(j) - q.kl*math.Cos(k)
 	p, r := q.ij*math.Sin(j), q.kl*math.Sin(k)
 	return math.Sqrt(along*along + p*p + r*r - 2*p*r*math.Cos(torsion))

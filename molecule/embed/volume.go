@@ -14,15 +14,16 @@ type volume struct {
 }
 
 const (
-	planarSlack = 0.2 // Å³
-	planarScale = 3.0 // Å³, about six times the volume at a tetrahedral carbon bearing one hydrogen
+	planarSlack  = 0.2 // Å³, about 5° of twist at a double bond
+	twistedSlack = 1.7 // Å³, about 50°
+	planarScale  = 3.0 // Å³, about six times the volume at a tetrahedral carbon bearing one hydrogen
 	// centerShare of the volume of the reference tetrahedron is asked of a stereocentre. Strained centres are flatter than
 	// the reference, never inverted.
 	centerShare = 0.4
 )
 
-func planarVolume(a, b, c, d int) volume {
-	return volume{atoms: [4]int{a, b, c, d}, low: -planarSlack, high: planarSlack, scale: planarScale}
+func planarVolume(a, b, c, d int, slack float64) volume {
+	return volume{atoms: [4]int{a, b, c, d}, low: -slack, high: slack, scale: planarScale}
 }
 
 // fixCenters asks for the right sign of the volume at every specified stereocentre. Seen from the first neighbour the others
