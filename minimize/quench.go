@@ -110,7 +110,7 @@ func (q *Quencher) Quench(ctx context.Context, x []float64) (Result, error) {
 // Crude runs the L-BFGS stage alone, down to Settings.CrudeRMS. The result may be handed to [Quencher.Finish] or dropped. If line
 // searches fail on the way its GradientRMS is higher, which is no error: Newton's method may still go on from there.
 func (q *Quencher) Crude(ctx context.Context, x []float64) (Result, error) {
-	q.evaluations, q.hessians, q.saddles = 0, 0, 0
+	q.evaluations, q.hessians, q.saddles, q.newton.lowest = 0, 0, 0, 0
 	if err := q.start(x); err != nil {
 		return Result{}, err
 	}
@@ -124,6 +124,7 @@ func (q *Quencher) Crude(ctx context.Context, x []float64) (Result, error) {
 // Finish takes the result of [Quencher.Crude] to the minimum and counts on from it.
 func (q *Quencher) Finish(ctx context.Context, crude Result) (Result, error) {
 	q.evaluations, q.hessians, q.saddles = crude.Evaluations, crude.Hessians, crude.Saddles
+	q.newton.lowest = 0
 	if err := q.start(crude.X); err != nil {
 		return crude, err
 	}

@@ -134,6 +134,30 @@ func TestQuenchLeavesSaddles(t *testing.T) {
 	}
 }
 
+// From a saddle between two different minima the quench goes to the lower one, whichever way the mode points.
+func TestQuenchLeavesSaddleToTheLowerSide(t *testing.T) {
+	for _, tilt := range []float64{0.3, -0.3} {
+		uneven := func(angle float64) (float64, float64) {
+			return 2*math.Cos(2*angle) + tilt*math.Sin(angle), -4*math.Sin(2*angle) + tilt*math.Cos(angle)
+		}
+		f := chain(uneven)
+		top := tilt / 8 // where the slope -4 sin 2φ + tilt cos φ vanishes, to first order
+		for range 20 {
+			_, slope := uneven(top)
+			top += slope / 8
+		}
+		saddle, err := Hold(context.Background(), f, chainGeometry(top), Torsion{[4]int{0, 1, 2, 3}, top}, Settings{})
+		require.NoError(t, err)
+		r, err := Quench(context.Background(), f, saddle.X, Settings{})
+		require.NoError(t, err)
+		require.Equal(t, 1, r.Saddles)
+		require.InDelta(t, -2.3, r.Energy, 1e-9)
+		again, err := Quench(context.Background(), f, saddle.X, Settings{})
+		require.NoError(t, err)
+		require.Equal(t, r, again)
+	}
+}
+
 // Where the potential is flat to second order a quench ends, without being taken for a saddle.
 func TestQuenchOnFlatPotentials(t *testing.T) {
 	quartic := &valence{
@@ -228,6 +252,7 @@ func TestCrudeThenFinish(t *testing.T) {
 	require.NoError(t, err)
 	require.LessOrEqual(t, crude.GradientRMS, 0.1)
 	require.Zero(t, crude.Hessians)
+	require.Zero(t, crude.LowestEigenvalue, "not that of the quench before")
 	require.Less(t, crude.Evaluations, whole.Evaluations)
 	_, err = q.Quench(context.Background(), scattered(13, rand.New(rand.NewPCG(5, 5))))
 	require.NoError(t, err)
@@ -348,24 +373,5 @@ func TestQuenchStopsWithItsContext(t *testing.T) {
 		require.ErrorIs(t, err, context.Canceled)
 		require.LessOrEqual(t, f.energies, at+1)
 		require.Len(t, r.X, len(x), "the best point found comes with the error")
-	}
-}
-
-func BenchmarkQuench(b *testing.B) {
-	for _, n := range []int{13, 38} {
-		b.Run(map[int]string{13: "LJ13", 38: "LJ38"}[n], func(b *testing.B) {
-			q := NewQuencher(lennardJones(b, n), Settings{})
-			rng := rand.New(rand.NewPCG(8, uint64(n)))
-			evaluations, hessians := 0, 0
-			b.ReportAllocs()
-			for b.Loop() {
-				r, err := q.Quench(context.Background(), scattered(n, rng))
-				require.NoError(b, err)
-				evaluations += r.Evaluations
-				hessians += r.Hessians
-			}
-			b.ReportMetric(float64(evaluations)/float64(b.N), "evaluations/op")
-			b.ReportMetric(float64(hessians)/float64(b.N), "hessians/op")
-		})
 	}
 }
