@@ -38,6 +38,10 @@ func perceive(elements []molecule.Element, isotopes map[int]int, g molecule.Geom
 		}
 		s.choices = append(s.choices, choices)
 	}
+	s.settleNeighbors()
+	if err := s.markOutward(); err != nil {
+		return nil, nil, err
+	}
 	parts := s.parts()
 	for limit := usual; limit <= unusual; limit++ {
 		if best := s.assemble(parts, limit)[charge]; best != nil {

@@ -91,3 +91,49 @@ func states(e molecule.Element, neighbors int) []state {
 	}
 	return list
 }
+
+// settleNeighbors changes the costs of states that depend on what an atom is bonded to.
+func (s *structure) settleNeighbors() {
+	for i, e := range s.elements {
+		if e == 7 && len(s.around[i]) == 1 {
+			s.settleTerminalNitrogen(i)
+		}
+	}
+	s.pairOxides()
+}
+
+// settleTerminalNitrogen keeps nitriles as they are (no C=C=N⁻ for the sake of another anion) and draws azides and diazo
+// compounds with the charge on the last nitrogen.
+func (s *structure) settleTerminalNitrogen(atom int) {
+	price := 12
+	if s.elements[s.around[atom][0].Atom] == 7 {
+		price = 7
+	}
+	for k, c := range s.choices[atom] {
+		if c.charge == -1 && c.extra == 1 {
+			s.choices[atom][k].cost = price
+		}
+	}
+}
+
+// pairOxides draws N-oxides (nitrones, azoxy compounds, pyridine oxides: a nitrogen with three neighbours, exactly one of them
+// a terminal oxygen) as N⁺–O⁻ at the price of one hypervalent atom. Counted as two charges, the pair would lose against
+// drawings that break an aromatic ring to be rid of it.
+func (s *structure) pairOxides() {
+	for i, e := range s.elements {
+		if e != 7 || len(s.around[i]) != 3 {
+			continue
+		}
+		oxygen, terminal := 0, 0
+		for _, n := range s.around[i] {
+			if s.elements[n.Atom] == 8 && len(s.around[n.Atom]) == 1 {
+				oxygen = n.Atom
+				terminal++
+			}
+		}
+		if terminal == 1 {
+			s.choices[i] = []state{{extra: 1, charge: 1, cost: 2}, {cost: 8}}
+			s.choices[oxygen] = []state{{charge: -1}, {extra: 1, cost: 40, rank: unusual}, {cost: 200, rank: open}}
+		}
+	}
+}
