@@ -163,7 +163,7 @@ func disturbed(x []float64, by float64, seed uint64) []float64 {
 // TestDerivativesOfMolecules covers all terms together, away from the published minima.
 func TestDerivativesOfMolecules(t *testing.T) {
 	for _, r := range publishedChecks(t) {
-		if len(r.elements) > 24 {
+		if len(r.elements) > 18 {
 			continue
 		}
 		for _, o := range []Options{{}, {Static: true, Dielectric: 4, DistanceDependent: true}} {

@@ -37,6 +37,7 @@ func TestRefusals(t *testing.T) {
 		{"chlorine dioxide group", "CH3 Cl O O", "1-2 2=3 2=4", 2, "Cl", "valence 5"},
 		{"sulfur hexafluoride", "S F F F F F F", "1-2 1-3 1-4 1-5 1-6 1-7", 1, "S", "6 bonds"},
 		{"sulfur dioxide", "S O O", "1=2 1=3", 1, "S", "no atom type"},
+		{"sulfoxonium ylide", "S O CH3 CH3 CH2", "1=2 1-3 1-4 1=5", 1, "S", "no atom type"},
 		{"sulfur trioxide", "S O O O", "1=2 1=3 1=4", 1, "S", "no atom type"},
 		{"nitrilium", "CH3 C N+ CH3", "1-2 2#3 3-4", 3, "N", "formal charge"},
 		{"oxygen molecule", "O O", "1=2", 1, "O", "no atom type"},

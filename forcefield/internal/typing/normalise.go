@@ -1,7 +1,7 @@
 package typing
 
 // normalise brings the drawings in use to one form: nitro, N-oxide, azide and diazo groups with charges, four-coordinate S,
-// P and Cl with charges (single bonds to O⁻, S⁻ and N⁻), sulfoxides and sulfilimines without.
+// P and Cl with charges (single bonds to O⁻, S⁻ and N⁻), sulfoxides, sulfilimines and ylides without.
 func (g *graph) normalise() {
 	for i, e := range g.element {
 		if e == 7 {
@@ -18,6 +18,7 @@ func (g *graph) normalise() {
 		switch {
 		case (e == 15 || e == 16 || e == 17) && g.degree(i) == 4:
 			g.makeDative(i)
+			g.joinYlide(i)
 		case e == 16 && g.degree(i) == 3:
 			g.makeSulfoxide(i)
 		}
@@ -92,7 +93,7 @@ func (g *graph) makeDative(i int) {
 	}
 }
 
-// makeSulfoxide draws S⁺–O⁻ and S⁺–N⁻ on three-coordinate S as double bonds. Sulfinate and thiosulfinate ions have a
+// makeSulfoxide draws S⁺–O⁻, S⁺–N⁻ and S⁺–C⁻ on three-coordinate S as double bonds. Sulfinate and thiosulfinate ions have a
 // second terminal atom and stay.
 func (g *graph) makeSulfoxide(i int) {
 	if g.charge[i] != 1 || g.terminals(i, 8)+g.terminals(i, 16) > 1 {
@@ -101,14 +102,36 @@ func (g *graph) makeSulfoxide(i int) {
 	bond, partner, anions := -1, -1, 0
 	for _, n := range g.neighbors(i) {
 		oxide := g.element[n.Atom] == 8 && g.degree(n.Atom) == 1
-		imide := g.element[n.Atom] == 7 && g.degree(n.Atom) == 2
-		if g.order[n.Bond] == 1 && g.charge[n.Atom] == -1 && (oxide || imide) {
+		if g.order[n.Bond] == 1 && g.charge[n.Atom] == -1 && (oxide || g.isYlideEnd(n.Atom)) {
 			bond, partner, anions = n.Bond, n.Atom, anions+1
 		}
 	}
 	if anions == 1 {
-		g.order[bond] = 2
-		g.charge[i]--
-		g.charge[partner]++
+		g.unite(bond, i, partner)
+	}
+}
+
+// isYlideEnd says whether an anion is two-coordinate N or three-coordinate C.
+func (g *graph) isYlideEnd(i int) bool {
+	return g.element[i] == 7 && g.degree(i) == 2 || g.element[i] == 6 && g.degree(i) == 3
+}
+
+// unite raises the order of a bond by one at the expense of the charges of its atoms.
+func (g *graph) unite(bond, cation, anion int) {
+	g.order[bond]++
+	g.charge[cation]--
+	g.charge[anion]++
+}
+
+// joinYlide draws P⁺–N⁻ and P⁺–C⁻ as double bonds where P has no terminal O or S whose charge it balances.
+func (g *graph) joinYlide(i int) {
+	if g.element[i] != 15 || g.charge[i] != 1 || g.terminals(i, 8)+g.terminals(i, 16) > 0 {
+		return
+	}
+	for _, n := range g.neighbors(i) {
+		if g.order[n.Bond] == 1 && g.charge[n.Atom] == -1 && g.isYlideEnd(n.Atom) {
+			g.unite(n.Bond, i, n.Atom)
+			return
+		}
 	}
 }

@@ -99,6 +99,8 @@ func (t *typer) sulfur(i int) string {
 func (t *typer) sulfonylSulfur(i int) string {
 	oxygens := t.count(i, 8)
 	switch {
+	case t.terminals(i, 8)+t.terminals(i, 16)+t.count(i, 7) < 2:
+		return ""
 	case t.terminals(i, 8) < 2:
 		return "SNO"
 	case oxygens == 4:
