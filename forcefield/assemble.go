@@ -31,7 +31,7 @@ func assemble(m *molecule.Molecule, o Options) (*MMFF94, error) {
 		return nil, unsupported(m, untyped.Atom, untyped.Reason)
 	}
 	a := &assembly{
-		MMFF94:   &MMFF94{options: o, atoms: len(m.Atoms), types: typed.Types, angleReference: map[[3]int]float64{}},
+		MMFF94:   &MMFF94{options: o, atoms: len(m.Atoms), types: typed.Types, empirical: []Empirical{}, angleReference: map[[3]int]float64{}},
 		molecule: m, tables: tables, typed: typed,
 	}
 	for _, add := range []func() error{a.addBonds, a.addAngles, a.addTorsions} {

@@ -84,7 +84,7 @@ func (f *MMFF94) Options() Options { return f.options }
 func (f *MMFF94) Atoms() int { return f.atoms }
 
 // Energy returns the energy in kcal/mol. x holds 3N coordinates in Å, atom-major; grad, if not nil, holds 3N elements and
-// receives dE/dx in kcal/mol/Å. The energy of coincident atoms is finite; coordinates that are not numbers give NaN.
+// receives dE/dx in kcal/mol/Å. Coincident atoms have a finite energy; NaN in x gives NaN.
 func (f *MMFF94) Energy(x, grad []float64) float64 {
 	if grad == nil {
 		return f.Terms(x).Sum()

@@ -20,9 +20,10 @@ func TestRefusals(t *testing.T) {
 	}{
 		{"borane", "BH2 CH3", "1-2", 1, "B", "does not cover the element B"},
 		{"selenide", "CH3 Se CH3", "1-2 2-3", 2, "Se", "does not cover the element Se"},
-		{"aluminium ion", "Al+3", "", 1, "Al", "with charge +3"},
-		{"neutral sodium", "Na", "", 1, "Na", "with charge +0"},
-		{"magnesium with a bond", "CH3 Mg+2", "1-2", 2, "Mg", "only as an ion without bonds"},
+		{"aluminium ion", "Al+3", "", 1, "Al", "does not cover the element Al"},
+		{"neutral sodium", "Na", "", 1, "Na", "covers Na only as an ion without bonds, charge +1"},
+		{"magnesium with a bond", "CH3 Mg+2", "1-2", 2, "Mg", "covers Mg only as an ion without bonds, charge +2"},
+		{"iron(0)", "Fe", "", 1, "Fe", "charge +2 or +3"},
 		{"iodide", "I-", "", 1, "I", "lone atom I with charge -1"},
 		{"carbon atom", "C", "", 1, "C", "lone atom C"},
 		{"methyl cation", "CH3+ ", "", 1, "C", "3 bonds, valence 3 and charge +1"},
@@ -67,7 +68,7 @@ func TestRefusalOfRadicals(t *testing.T) {
 	m := sketch.Molecule(t, "CH3", "")
 	m.Atoms[0].Radical = 1
 	_, err := NewMMFF94(m, Options{})
-	require.ErrorContains(t, err, "atom 1 (C, bonded to -H2, -H3, -H4): MMFF94 does not cover radicals (1 unpaired electrons)")
+	require.ErrorContains(t, err, "atom 1 (C, bonded to -H2, -H3, -H4): MMFF94 does not cover radicals (unpaired electrons: 1)")
 }
 
 // TestMissingParameters needs a torsion about a bond from chlorine to oxygen, for which neither table nor rule exists.

@@ -2,6 +2,7 @@ package typing
 
 import (
 	"fmt"
+	"strings"
 
 	"tarn/molecule"
 )
@@ -108,24 +109,30 @@ func (g *graph) inFourRing(i int) bool {
 // checkElements refuses what no atom type covers, whatever its neighbours.
 func (g *graph) checkElements() error {
 	for i, a := range g.molecule.Atoms {
-		if a.Radical != 0 {
-			return &Error{i, fmt.Sprintf("MMFF94 does not cover radicals (%d unpaired electrons)", a.Radical)}
-		}
-		switch a.Element {
-		case 1, 6, 7, 8, 9, 14, 15, 16, 17, 35, 53:
-			if g.degree(i) == 0 && ions[ion{a.Element, a.Charge}] == "" {
-				return &Error{i, fmt.Sprintf("MMFF94 has no type for a lone atom %s with charge %+d", a.Element, a.Charge)}
-			}
+		known := ions[ion{a.Element, a.Charge}] != "" && g.degree(i) == 0
+		switch {
+		case a.Radical != 0:
+			return &Error{i, fmt.Sprintf("MMFF94 does not cover radicals (unpaired electrons: %d)", a.Radical)}
+		case known || formsBonds(a.Element) && g.degree(i) > 0:
+		case formsBonds(a.Element):
+			return &Error{i, fmt.Sprintf("MMFF94 has no type for a lone atom %s with charge %+d", a.Element, a.Charge)}
+		case len(ionCharges(a.Element)) > 0:
+			return &Error{i, fmt.Sprintf("MMFF94 covers %s only as an ion without bonds, charge %s", a.Element,
+				strings.Join(ionCharges(a.Element), " or "))}
 		default:
-			if ions[ion{a.Element, a.Charge}] == "" {
-				return &Error{i, fmt.Sprintf("MMFF94 does not cover the element %s with charge %+d", a.Element, a.Charge)}
-			}
-			if g.degree(i) > 0 {
-				return &Error{i, fmt.Sprintf("MMFF94 covers %s only as an ion without bonds", a.Element)}
-			}
+			return &Error{i, fmt.Sprintf("MMFF94 does not cover the element %s", a.Element)}
 		}
 	}
 	return nil
+}
+
+// formsBonds says whether an element has types for bonded atoms.
+func formsBonds(e molecule.Element) bool {
+	switch e {
+	case 1, 6, 7, 8, 9, 14, 15, 16, 17, 35, 53:
+		return true
+	}
+	return false
 }
 
 // checkValences compares the bond orders and the charge of each atom, after normalisation, with the valences that the

@@ -1,6 +1,10 @@
 package typing
 
-import "tarn/molecule"
+import (
+	"fmt"
+
+	"tarn/molecule"
+)
 
 // ion is an atom without bonds.
 type ion struct {
@@ -12,6 +16,17 @@ type ion struct {
 var ions = map[ion]string{
 	{3, 1}: "LI+", {9, -1}: "F-", {11, 1}: "NA+", {12, 2}: "MG+2", {17, -1}: "CL-", {19, 1}: "K+", {20, 2}: "CA+2",
 	{26, 2}: "FE+2", {26, 3}: "FE+3", {29, 1}: "CU+1", {29, 2}: "CU+2", {30, 2}: "ZN+2", {35, -1}: "BR-",
+}
+
+// ionCharges returns the charges that an element may have as an ion, ascending.
+func ionCharges(e molecule.Element) []string {
+	var charges []string
+	for charge := -1; charge <= 3; charge++ {
+		if ions[ion{e, charge}] != "" {
+			charges = append(charges, fmt.Sprintf("%+d", charge))
+		}
+	}
+	return charges
 }
 
 // conjugatedOxygen holds the symbols of O on a carbon by the doubly bonded partner of that carbon, in order of precedence.
