@@ -17,7 +17,8 @@ type Minimum struct {
 	WavenumbersCM1         []float64 `json:"wavenumbers_cm1,omitempty"` // all modes, ascending; none for a cluster
 	RotationalConstantsMHz []float64 `json:"rotational_constants_mhz,omitempty"`
 	DipoleDebye            float64   `json:"dipole_debye"`
-	GradientRMS            float64   `json:"gradient_rms"` // kcal/mol/Å
+	GradientRMS            float64   `json:"gradient_rms"`      // kcal/mol/Å
+	LowestEigenvalue       float64   `json:"lowest_eigenvalue"` // of the Hessian, kcal/mol/Å²
 
 	FoundInRound   int `json:"found_in_round"`
 	LastHitInRound int `json:"last_hit_in_round"` // a store needs to write only what the last round touched

@@ -9,13 +9,14 @@ import (
 // Set is what can move in a molecule.
 type Set struct {
 	Torsions   []Torsion
+	Tops       []Torsion // rotations of three like atoms on one atom, which rarely do anything new
 	Cranks     []Crank
 	Inversions []Inversion
 	// RingFreedom is the number of independent ring torsions, roughly: the flexible ring atoms less three a ring.
 	RingFreedom int
 }
 
-// Rigid tells whether nothing can move.
+// Rigid tells whether nothing but tops can move.
 func (s *Set) Rigid() bool { return len(s.Torsions)+len(s.Cranks)+len(s.Inversions) == 0 }
 
 // Freedom is the number of degrees of freedom that lead from minimum to minimum, roughly.
@@ -32,8 +33,11 @@ func Analyze(m *molecule.Molecule) *Set {
 		if b.Order != 1 || ring[i] || linearDone[i] {
 			continue
 		}
-		if t, ok := torsionOf(m, b, linearDone); ok {
+		switch t, kind := torsionOf(m, b, linearDone); kind {
+		case rotatable:
 			s.Torsions = append(s.Torsions, t)
+		case spinning:
+			s.Tops = append(s.Tops, t)
 		}
 	}
 	s.Cranks, s.RingFreedom = cranks(m, ring)
@@ -59,12 +63,13 @@ func ringBonds(m *molecule.Molecule) []bool {
 
 // torsionOf follows linear groups at both ends, so that the axis is one however many atoms lie on it; the single bonds of such an axis
 // are marked done.
-func torsionOf(m *molecule.Molecule, b molecule.Bond, done map[int]bool) (Torsion, bool) {
+func torsionOf(m *molecule.Molecule, b molecule.Bond, done map[int]bool) (Torsion, bondKind) {
 	a, bb := b.A, b.B
 	beforeA, endA := throughLinear(m, b.B, a, done)
 	beforeB, endB := throughLinear(m, b.A, bb, done)
-	if top(m, endA, beforeA) || top(m, endB, beforeB) {
-		return Torsion{}, false
+	kind := min(endKind(m, endA, beforeA), endKind(m, endB, beforeB))
+	if kind == fixed {
+		return Torsion{}, fixed
 	}
 	sideA, sideB := side(m, a, bb), side(m, bb, a)
 	t := Torsion{A: a, B: bb, Atoms: sideB, Ends: [2]int{other(m, endA, beforeA), other(m, endB, beforeB)}}
@@ -72,7 +77,7 @@ func torsionOf(m *molecule.Molecule, b molecule.Bond, done map[int]bool) (Torsio
 		t.Atoms = sideA
 	}
 	t.Atoms = slices.DeleteFunc(t.Atoms, func(i int) bool { return i == a || i == bb })
-	return t, true
+	return t, kind
 }
 
 // throughLinear walks from atom away from previous as long as atoms are linear (two neighbours, a triple bond or two double bonds).
@@ -94,8 +99,16 @@ func linear(m *molecule.Molecule, atom int) bool {
 	return len(around) == 2 && m.Bonds[around[0].Bond].Order+m.Bonds[around[1].Bond].Order == 4
 }
 
-// top tells whether turning the end does nothing new: no further neighbours, or three alike that are single atoms.
-func top(m *molecule.Molecule, end, before int) bool {
+// bondKind says what a rotation does.
+type bondKind int
+
+const (
+	fixed     bondKind = iota // nothing: there is no atom off the axis
+	spinning                  // it permutes three like atoms
+	rotatable                 // something new
+)
+
+func endKind(m *molecule.Molecule, end, before int) bondKind {
 	count, alike, element := 0, true, molecule.Element(0)
 	for _, n := range m.Neighbors(end) {
 		if n.Atom == before {
@@ -108,7 +121,13 @@ func top(m *molecule.Molecule, end, before int) bool {
 		}
 		element = e
 	}
-	return count == 0 || count == 3 && alike
+	switch {
+	case count == 0:
+		return fixed
+	case count == 3 && alike:
+		return spinning
+	}
+	return rotatable
 }
 
 func other(m *molecule.Molecule, end, before int) int {

@@ -1,0 +1,79 @@
+package search
+
+import (
+	"math"
+	"math/rand/v2"
+
+	"tarn/search/moves"
+)
+
+// tries is how many candidates a leap looks at before it takes the one of lowest energy, and clash the energy above the start, in kcal/mol
+// for one changed degree of freedom, from which a candidate counts as atoms pushed into each other.
+const (
+	tries = 10
+	clash = 60.0
+)
+
+// leap writes to trial a geometry that is likely to quench to another minimum than here does.
+func (w *walker) leap(trial, here []float64, energy float64) {
+	if w.problem.Cluster() {
+		copy(trial, here)
+		clusterLeap(trial, w.rng)
+		return
+	}
+	best := math.Inf(1)
+	candidate := make([]float64, len(here))
+	for range tries {
+		copy(candidate, here)
+		changed := moleculeLeap(candidate, w.problem.moves, w.rng)
+		e := w.energy(candidate)
+		if e < best || math.IsInf(best, 1) {
+			best = e
+			copy(trial, candidate)
+		}
+		if e < energy+clash*float64(changed) {
+			return
+		}
+	}
+}
+
+// moleculeLeap changes one to a few degrees of freedom by any amount and returns how many.
+func moleculeLeap(x []float64, s *moves.Set, rng *rand.Rand) (changed int) {
+	freedom := s.Freedom()
+	if freedom == 0 || len(s.Tops) > 0 && rng.Float64() < 0.05 {
+		for i := range s.Tops {
+			s.Tops[i].Rotate(x, 2*math.Pi*rng.Float64())
+		}
+		moves.Kick(x, 0.4, rng)
+		return 3
+	}
+	changed = 1
+	for changed < freedom && rng.Float64() < 0.5 {
+		changed++
+	}
+	for range changed {
+		switch k := rng.IntN(freedom); {
+		case k < len(s.Torsions):
+			s.Torsions[rng.IntN(len(s.Torsions))].Rotate(x, math.Pi*(2*rng.Float64()-1))
+		case k < len(s.Torsions)+len(s.Inversions):
+			s.Inversions[rng.IntN(len(s.Inversions))].Apply(x)
+		default:
+			c := &s.Cranks[rng.IntN(len(s.Cranks))]
+			if rng.Float64() < 0.4 {
+				c.Flap(x)
+			} else {
+				c.Rotate(x, math.Pi*(2*rng.Float64()-1))
+			}
+		}
+	}
+	return changed
+}
+
+// clusterLeap shifts all atoms or resettles the most loosely bound.
+func clusterLeap(x []float64, rng *rand.Rand) {
+	if rng.Float64() < 0.75 {
+		moves.Kick(x, 0.25+0.35*rng.Float64(), rng)
+		return
+	}
+	moves.Resettle(x, 1+rng.IntN(max(1, len(x)/30)), rng)
+}

@@ -1,0 +1,71 @@
+package search
+
+import (
+	"context"
+	"math"
+
+	"tarn/search/integrate"
+	"tarn/search/schedule"
+)
+
+func minimaLimits(p *Problem) limits {
+	if p.Cluster() {
+		return limits{0.4, 1.0} // Wales & Doye 1997 found 0.8 to serve all clusters
+	}
+	return limits{400 * integrate.Boltzmann, 1500 * integrate.Boltzmann}
+}
+
+// minimaWalk is Monte Carlo over minima: a large move, a quench, and the Metropolis criterion on the energies of the minima before and
+// after. Sources: Z. Li, H. A. Scheraga, Proc. Natl. Acad. Sci. USA 84, 6611 (1987); D. J. Wales, J. P. K. Doye, J. Phys. Chem. A 101,
+// 5111 (1997). The temperature starts from the uphill moves of a first stage that accepts everything, is cooled by the same schedule as
+// other annealing, and reheated when cold.
+func (w *walker) minimaWalk(ctx context.Context, start []float64, energy float64) error {
+	p := w.problem
+	here := append([]float64(nil), start...)
+	trial := make([]float64, len(here))
+	span := minimaLimits(p)
+	factor, slowness := schedule.Reheat(w.reheat)
+	hottest, kT := span.hottest, math.Inf(1)
+	const length = 6 // quenches a stage
+	for stage := 0; ; stage++ {
+		var uphill []float64
+		accepted, tried, sum, square := 0, 0.0, 0.0, 0.0
+		for range length {
+			w.leap(trial, here, energy)
+			shown := kT
+			if math.IsInf(kT, 1) {
+				shown = hottest
+			}
+			o, err := w.quench(ctx, trial, w.kelvin(shown))
+			if o.fate == kept || o.fate == above {
+				tried++
+				if o.energy > energy {
+					uphill = append(uphill, o.energy-energy)
+				}
+				if o.energy <= energy || w.rng.Float64() < math.Exp((energy-o.energy)/kT) {
+					copy(here, o.x)
+					energy = o.energy
+					accepted++
+				}
+			}
+			sum += energy
+			square += energy * energy
+			if err != nil {
+				return err
+			}
+		}
+		mean := sum / length
+		if stage == 0 {
+			hottest = factor * schedule.Start(uphill, schedule.StartAcceptance)
+			hottest = min(span.hottest, max(span.coldest, hottest))
+			kT = hottest
+			w.noteStage(kT, float64(accepted)/max(1, tried), mean)
+			continue
+		}
+		w.noteStage(kT, float64(accepted)/max(1, tried), mean)
+		kT = schedule.Cool(kT, math.Sqrt(max(0, square/length-mean*mean)), slowness)
+		if kT < span.coldest {
+			kT = hottest
+		}
+	}
+}

@@ -1,0 +1,117 @@
+package search
+
+import (
+	"cmp"
+	"math/rand/v2"
+	"slices"
+)
+
+// walkKind is what a walk does. Method anneal shares its walks among the first two, dynamics has the third alone, mixed all.
+type walkKind int
+
+const (
+	overMinima walkKind = iota // Monte Carlo over minima, annealed
+	thermal                    // Metropolis on the potential energy surface, annealed
+	trajectory                 // Langevin dynamics
+)
+
+func (k walkKind) String() string {
+	return [...]string{"over minima", "thermal", "trajectory"}[k]
+}
+
+// walksInRound is the number of walks of a round, whatever the number of workers: two for each way to choose a start.
+const walksInRound = 8
+
+// kinds returns the kinds of walk of a method; the walks of a round take them in turn.
+func kinds(m Method) []walkKind {
+	switch m {
+	case Dynamics:
+		return []walkKind{trajectory}
+	case Mixed:
+		return []walkKind{overMinima, trajectory}
+	}
+	return []walkKind{overMinima, thermal}
+}
+
+// plan is what a walk is told to do.
+type plan struct {
+	number int
+	kind   walkKind
+	start  int // index of a minimum, -1 for a geometry built anew
+	quota  int
+}
+
+// quotaOf is the number of quenches of a walk: long enough to get away from its start, short enough that a round ends soon.
+func (p *Problem) quotaOf() int {
+	if p.Cluster() {
+		return 20 + 10*p.Atoms()
+	}
+	return min(60, 8+3*p.moves.Freedom())
+}
+
+// plan makes the plans of the next round from the checkpoint and the seed alone. Of every four starts one is the lowest minimum or, by
+// Boltzmann-like chance, one near it; one is the minimum in the window that was drawn least often; one is any minimum in the window; and
+// one is built anew, by distance geometry or as a random cluster. The first round builds all anew.
+func (r *run) plan() []plan {
+	rng := walkStream(r.settings.Seed, r.checkpoint.Round, choiceWalk)
+	inWindow := r.inWindow()
+	available := kinds(r.settings.Method)
+	left := r.settings.MaxQuenches - r.checkpoint.Quenches
+	plans := make([]plan, 0, walksInRound)
+	for number := range walksInRound {
+		quota := min(r.problem.quotaOf(), (left+walksInRound-1-number)/walksInRound)
+		if quota <= 0 {
+			break
+		}
+		pl := plan{number: number, kind: available[number%len(available)], start: -1, quota: quota}
+		if len(inWindow) > 0 {
+			switch (number / 2) % 4 {
+			case 0:
+				pl.start = inWindow[lowRank(len(inWindow), rng)]
+			case 1:
+				pl.start = r.leastDrawn(inWindow, number%2, rng)
+			case 2:
+				pl.start = inWindow[rng.IntN(len(inWindow))]
+			}
+		}
+		plans = append(plans, pl)
+	}
+	return plans
+}
+
+// lowRank draws a rank, the lowest most often: half of the time 0, else each further one with three quarters of the chance of the one before.
+func lowRank(count int, rng *rand.Rand) int {
+	rank := 0
+	if rng.Float64() < 0.5 {
+		for rank = 1; rng.Float64() < 0.75; {
+			rank++
+		}
+	}
+	return rank % count
+}
+
+// leastDrawn returns the minimum with the nth least draws; ties are broken at random.
+func (r *run) leastDrawn(inWindow []int, nth int, rng *rand.Rand) int {
+	order := slices.Clone(inWindow)
+	rng.Shuffle(len(order), func(i, j int) { order[i], order[j] = order[j], order[i] })
+	slices.SortStableFunc(order, func(a, b int) int {
+		return cmp.Compare(r.checkpoint.Minima[a].Draws, r.checkpoint.Minima[b].Draws)
+	})
+	return order[min(nth, len(order)-1)]
+}
+
+// inWindow lists the minima in the window by ascending energy.
+func (r *run) inWindow() []int {
+	minima := r.checkpoint.Minima
+	top := r.lowest() + r.settings.WindowKcal
+	var list []int
+	for i := range minima {
+		if minima[i].Energy <= top {
+			list = append(list, i)
+		}
+	}
+	slices.SortFunc(list, func(a, b int) int {
+		return cmp.Or(cmp.Compare(minima[a].Energy, minima[b].Energy), cmp.Compare(a, b))
+	})
+	return list
+}

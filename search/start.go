@@ -1,0 +1,124 @@
+package search
+
+import (
+	"context"
+	"fmt"
+	"math/rand/v2"
+
+	"tarn/minimize"
+	"tarn/molecule"
+	"tarn/search/moves"
+)
+
+// settleStereo reads what the molecule leaves open off the geometry, or refuses.
+func (p *Problem) settleStereo(geometry molecule.Geometry) error {
+	if geometry != nil {
+		if geometry.Atoms() != len(p.Molecule.Atoms) {
+			return fmt.Errorf("the geometry has %d atoms, the molecule %d", geometry.Atoms(), len(p.Molecule.Atoms))
+		}
+		if err := p.Molecule.CheckStereo(geometry); err != nil {
+			return fmt.Errorf("the given coordinates: %w", err)
+		}
+	}
+	open := p.Molecule.Stereo().Unspecified()
+	if open == 0 {
+		return nil
+	}
+	if geometry != nil {
+		settled, err := p.Molecule.StereoFromGeometry(geometry)
+		if err != nil {
+			return fmt.Errorf("reading the stereochemistry off the given coordinates: %w", err)
+		}
+		p.Molecule = settled
+		return nil
+	}
+	isomers, err := p.Molecule.Stereoisomers()
+	if err != nil {
+		return err
+	}
+	if len(isomers) == 1 {
+		p.Molecule = isomers[0]
+		return nil
+	}
+	return &UnspecifiedError{Open: open, Isomers: isomers}
+}
+
+// firstTries is how many random geometries are tried before a molecule is given up.
+const firstTries = 20
+
+// firstGeometry quenches the given geometry, or random ones until a quench keeps the stereochemistry.
+func (p *Problem) firstGeometry(ctx context.Context, given molecule.Geometry, seed uint64) (molecule.Geometry, error) {
+	q := minimize.NewQuencher(p.Field, minimize.Settings{})
+	if given != nil {
+		r, err := q.Quench(ctx, given)
+		if err != nil {
+			return nil, fmt.Errorf("quenching the given coordinates: %w", err)
+		}
+		if err := p.check(r.X); err != nil {
+			return nil, fmt.Errorf("quenching the given coordinates: %w", err)
+		}
+		return r.X, nil
+	}
+	rng := rand.New(rand.NewPCG(seed, firstStream))
+	var reason error
+	for range firstTries {
+		g, err := p.embedder.Draw(ctx, rng)
+		if err != nil {
+			return nil, fmt.Errorf("making a first geometry: %w", err)
+		}
+		r, err := q.Quench(ctx, g)
+		if err == nil {
+			err = p.check(r.X)
+		}
+		if err == nil {
+			return r.X, nil
+		}
+		if ctx.Err() != nil {
+			return nil, ctx.Err()
+		}
+		reason = err
+	}
+	return nil, fmt.Errorf("no first geometry kept its stereochemistry and bonds in the force field (%d tries; the last: %w)", firstTries, reason)
+}
+
+// brokenError says that two bonded atoms are no longer at the distance of a bond.
+type brokenError struct{ a, b int }
+
+func (e *brokenError) Error() string {
+	return fmt.Sprintf("the bond between atoms %d and %d is gone", e.a+1, e.b+1)
+}
+
+// check returns a *molecule.StereoError or a *brokenError if a quenched geometry is not the molecule any more.
+func (p *Problem) check(x molecule.Geometry) error {
+	if p.Cluster() {
+		return nil
+	}
+	const shortest, longest = 0.75, 1.35 // of the reference length; bonds in minima are within 10 %
+	for i, b := range p.Molecule.Bonds {
+		if d := x.Distance(b.A, b.B); p.lengths[i] > 0 && (d < shortest*p.lengths[i] || d > longest*p.lengths[i]) {
+			return &brokenError{b.A, b.B}
+		}
+	}
+	return p.Molecule.CheckStereo(x)
+}
+
+// watchedTorsions are those of the rotatable bonds and of the flexible rings.
+func watchedTorsions(m *molecule.Molecule, s *moves.Set) [][4]int {
+	var watched [][4]int
+	for _, t := range s.Torsions {
+		watched = append(watched, [4]int{t.Ends[0], t.A, t.B, t.Ends[1]})
+	}
+	flexible := make(map[int]bool)
+	for _, c := range s.Cranks {
+		flexible[c.A], flexible[c.B] = true, true
+	}
+	for _, r := range m.Rings() {
+		n := len(r)
+		for k := range r {
+			if n > 3 && flexible[r[(k+1)%n]] && flexible[r[(k+2)%n]] {
+				watched = append(watched, [4]int{r[k], r[(k+1)%n], r[(k+2)%n], r[(k+3)%n]})
+			}
+		}
+	}
+	return watched
+}

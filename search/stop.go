@@ -1,0 +1,48 @@
+package search
+
+import (
+	"math"
+
+	"tarn/search/coverage"
+)
+
+const (
+	// slack is how far the low end of the interval may lie below the target (0.95 for 0.99).
+	slack = 0.04
+	// leastRounds is the number of rounds below which nothing is believed.
+	leastRounds = 3
+)
+
+// counts sums up the draws of the minima in the window.
+func (r *run) counts() coverage.Counts {
+	top := r.lowest() + r.settings.WindowKcal
+	draws := make([]int, 0, len(r.checkpoint.Minima))
+	for i := range r.checkpoint.Minima {
+		if m := &r.checkpoint.Minima[i]; m.Energy <= top {
+			draws = append(draws, m.Draws)
+		}
+	}
+	return coverage.Count(draws)
+}
+
+func (r *run) lowest() float64 {
+	lowest := math.Inf(1)
+	for i := range r.checkpoint.Minima {
+		lowest = min(lowest, r.checkpoint.Minima[i].Energy)
+	}
+	return lowest
+}
+
+func coverageOf(c coverage.Counts) Coverage {
+	s := c.Sample()
+	return Coverage{Estimate: s.Estimate, Low: s.Low, High: s.High, Unseen: c.Chao().Estimate - float64(c.Observed)}
+}
+
+// complete tells whether the evidence suffices: coverage at the target, its low end within slack of it, and fewer unseen minima than the
+// target allows.
+func (r *run) complete(c coverage.Counts) bool {
+	target := r.settings.Coverage
+	now := coverageOf(c)
+	return r.checkpoint.Round >= leastRounds && c.Draws > 0 &&
+		now.Estimate >= target && now.Low >= target-slack && now.Unseen <= max(0.5, (1-target)*float64(c.Observed))
+}

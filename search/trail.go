@@ -1,0 +1,110 @@
+package search
+
+import (
+	"context"
+	"errors"
+	"math/rand/v2"
+
+	"tarn/minimize"
+	"tarn/molecule"
+)
+
+// fate is what became of a quench.
+type fate int
+
+const (
+	kept     fate = iota // a minimum of the molecule
+	above                // dropped after the crude stage, far above the window
+	inverted             // a minimum of another stereoisomer
+	broken               // bonds are gone
+	failed               // did not converge
+)
+
+// outcome is the end of one quench.
+type outcome struct {
+	fate        fate
+	x           []float64
+	energy      float64
+	gradientRMS float64
+	eigenvalue  float64
+}
+
+// trail is what a walk leaves behind. It is all that the merge sees, so the order of walks decides and not that of their work.
+type trail struct {
+	kind        walkKind
+	start       int // index of the minimum that the walk started from, -1 if it was built anew
+	outcomes    []outcome
+	stages      []Stage
+	evaluations int
+	inverted    []int // atoms at which a centre inverted
+}
+
+// walker is the state that all kinds of walk share: where snapshots are quenched and the outcomes noted.
+type walker struct {
+	problem  *Problem
+	rng      *rand.Rand
+	quencher *minimize.Quencher
+	quota    int     // quenches that the walk may still do
+	ceiling  float64 // crude energies above this are dropped
+	reheat   int     // fruitless rounds so far
+	notice   func(temperatureK, energy float64, evaluations int) bool
+	trail    trail
+}
+
+// crude is the gradient at which the first stage of a quench ends; from there the energy falls by less than crudeMargin.
+const (
+	crudeRMS    = 0.1 // kcal/mol/Å
+	crudeMargin = 4.0 // kcal/mol
+)
+
+// errSpent ends a walk whose quota or time is used up.
+var errSpent = errors.New("the walk is at its end")
+
+// quench brings a snapshot to its minimum and notes the outcome. It returns errSpent when the walk has to end after this quench, or the
+// error of ctx.
+func (w *walker) quench(ctx context.Context, x []float64, temperatureK float64) (outcome, error) {
+	w.quota--
+	result, err := w.quencher.Crude(ctx, x)
+	o := outcome{fate: failed, x: result.X, energy: result.Energy}
+	switch {
+	case err == nil && result.Energy > w.ceiling:
+		o.fate = above
+	case err == nil:
+		result, err = w.quencher.Finish(ctx, result)
+		if err == nil {
+			o = outcome{x: result.X, energy: result.Energy, gradientRMS: result.GradientRMS, eigenvalue: result.LowestEigenvalue}
+			o.fate = w.judge(result.X)
+		}
+	}
+	if ctx.Err() != nil {
+		return o, ctx.Err()
+	}
+	w.trail.evaluations += result.Evaluations
+	if o.fate != kept && o.fate != above {
+		o.x = nil
+	}
+	w.trail.outcomes = append(w.trail.outcomes, o)
+	if goOn := w.notice(temperatureK, o.energy, result.Evaluations); !goOn || w.quota <= 0 {
+		return o, errSpent
+	}
+	return o, nil
+}
+
+func (w *walker) judge(x []float64) fate {
+	err := w.problem.check(x)
+	var stereo *molecule.StereoError
+	switch {
+	case err == nil:
+		return kept
+	case errors.As(err, &stereo):
+		w.trail.inverted = append(w.trail.inverted, stereo.Atom)
+		return inverted
+	}
+	return broken
+}
+
+// energy evaluates and counts.
+func (w *walker) energy(x []float64) float64 {
+	w.trail.evaluations++
+	return w.problem.Field.Energy(x, nil)
+}
