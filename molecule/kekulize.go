@@ -36,8 +36,9 @@ func (d *Draft) kekulize(sums []int) ([]int, error) {
 	}
 	tier := d.doubleBondTiers(adjacency, aromatic)
 	match := newMatching(len(d.Atoms))
+	var allowed [][]int
 	for level := 0; level <= lastTier; level++ {
-		allowed := make([][]int, len(d.Atoms))
+		allowed = make([][]int, len(d.Atoms))
 		for i, b := range d.Bonds {
 			if b.Order == 0 && tier[i] <= level && needs[b.A] && needs[b.B] {
 				allowed[b.A] = append(allowed[b.A], b.B)
@@ -46,15 +47,7 @@ func (d *Draft) kekulize(sums []int) ([]int, error) {
 		}
 		match.extend(allowed)
 	}
-	fault := &KekuleError{}
-	for i, needed := range needs {
-		if needed && match.mate[i] < 0 {
-			fault.Atoms = append(fault.Atoms, i)
-			fault.Elements = append(fault.Elements, d.Atoms[i].Element)
-			fault.Places = append(fault.Places, d.Atoms[i].Place)
-		}
-	}
-	if len(fault.Atoms) > 0 {
+	if fault := d.kekuleFault(needs, match, allowed); fault != nil {
 		return nil, fault
 	}
 	for i, b := range d.Bonds {
@@ -63,6 +56,33 @@ func (d *Draft) kekulize(sums []int) ([]int, error) {
 		}
 	}
 	return orders, nil
+}
+
+// kekuleFault names an atom for each one that is left without a partner: a heteroatom if one could be in its place, since
+// that is where a hydrogen or charge is most often forgotten, else the first that could.
+func (d *Draft) kekuleFault(needs []bool, match *matching, allowed [][]int) error {
+	fault := &KekuleError{}
+	for i, needed := range needs {
+		if !needed || match.mate[i] >= 0 {
+			continue
+		}
+		named := -1
+		for _, atom := range match.exposable(i, allowed) {
+			if named < 0 || d.Atoms[named].Element == 6 && d.Atoms[atom].Element != 6 {
+				named = atom
+			}
+		}
+		if slices.Contains(fault.Atoms, named) {
+			named = i
+		}
+		fault.Atoms = append(fault.Atoms, named)
+		fault.Elements = append(fault.Elements, d.Atoms[named].Element)
+		fault.Places = append(fault.Places, d.Atoms[named].Place)
+	}
+	if len(fault.Atoms) == 0 {
+		return nil
+	}
+	return fault
 }
 
 // needsDoubleBond tells whether an aromatic atom has one place left for a double bond in its ring.

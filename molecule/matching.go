@@ -34,6 +34,19 @@ func (m *matching) extend(adjacency [][]int) {
 	}
 }
 
+// exposable returns, for a vertex that a maximum matching leaves unmatched, all vertices that could be left in its place.
+func (m *matching) exposable(root int, adjacency [][]int) []int {
+	search := newBlossomSearch(m.mate, adjacency)
+	search.augment(root)
+	var out []int
+	for i, even := range search.even {
+		if even {
+			out = append(out, i)
+		}
+	}
+	return out
+}
+
 // blossomSearch grows an alternating tree from one unmatched vertex; odd cycles are shrunk to their base.
 type blossomSearch struct {
 	mate      []int

@@ -26,9 +26,9 @@ func (m *Molecule) perceiveStereo() *stereoPerception {
 	p.spreadInCages()
 	for p.removeIdle(m.skeleton(), true) {
 	}
+	p.identify(m.skeleton())
 	p.compact()
 	p.publish()
-	p.identify(m.skeleton())
 	return p
 }
 
@@ -85,25 +85,35 @@ func relative(c configuration, opposite bool) configuration {
 }
 
 // removeIdle removes the units whose flipping changes nothing and tells whether there were any. With generic set, the
-// unspecified candidates take part as if each had a configuration of its own; otherwise they do not exist.
+// unspecified candidates take part as if each had a configuration of its own; otherwise they do not exist. Units that are
+// idle only because of one another (two methyl groups of 1,3,5-trimethylcyclohexane) stay: a unit goes if it is idle even
+// when all others that go are gone.
 func (p *stereoPerception) removeIdle(s *skeleton, generic bool) bool {
-	var idle []int
-	tested := map[int]bool{}
+	idle := map[int]bool{}
 	for _, c := range p.candidates {
-		if tested[c.unit] {
-			continue
-		}
-		tested[c.unit] = true
-		if p.mustTest(c.unit, generic) && p.flipsToSame(s, c.unit, generic) {
-			idle = append(idle, c.unit)
+		if _, tested := idle[c.unit]; !tested {
+			idle[c.unit] = p.mustTest(c.unit, generic) && p.flipsToSame(s, c.unit, generic, nil)
 		}
 	}
+	for shrunk := true; shrunk; {
+		shrunk = false
+		var needed []int
+		for unit, yes := range idle {
+			if yes && !p.flipsToSame(s, unit, generic, idle) {
+				needed = append(needed, unit)
+			}
+		}
+		for _, unit := range needed {
+			idle[unit], shrunk = false, true
+		}
+	}
+	found := false
 	for i := range p.candidates {
-		if slices.Contains(idle, p.candidates[i].unit) {
-			p.candidates[i].removed = true
+		if idle[p.candidates[i].unit] && !p.candidates[i].removed {
+			p.candidates[i].removed, found = true, true
 		}
 	}
-	return len(idle) > 0
+	return found
 }
 
 // mustTest tells whether a unit is still there and has no member with constitutionally different neighbours.
@@ -121,13 +131,14 @@ func (p *stereoPerception) mustTest(unit int, generic bool) bool {
 	return present
 }
 
-func (p *stereoPerception) flipsToSame(s *skeleton, unit int, generic bool) bool {
+// flipsToSame tells whether flipping a unit gives the same stereoisomer, without the other units that are absent.
+func (p *stereoPerception) flipsToSame(s *skeleton, unit int, generic bool, absent map[int]bool) bool {
 	var elements, flipped []stereoElement
 	marks := map[int]uint64{}
 	part := 0
 	for i, c := range p.candidates {
 		e := c.element
-		if c.removed || e.value == unspecified && !generic {
+		if c.removed || e.value == unspecified && !generic || absent[c.unit] && c.unit != unit {
 			continue
 		}
 		if e.value == unspecified {
@@ -173,9 +184,17 @@ func (p *stereoPerception) publish() {
 	})
 }
 
-// identify collects the specified elements that matter while the unspecified ones stay open.
+// identify collects the specified elements that matter while the unspecified ones stay open. Candidates that were removed
+// as idle are given any configuration first: whether one is left out, or specified without effect, is then the same.
 func (p *stereoPerception) identify(s *skeleton) {
 	q := &stereoPerception{candidates: slices.Clone(p.candidates), opposite: p.opposite}
+	for i := range q.candidates {
+		c := &q.candidates[i]
+		if c.removed && c.element.value == unspecified {
+			c.element.value = relative(clockwise, p.opposite[i])
+		}
+		c.removed = false
+	}
 	for q.removeIdle(s, false) {
 	}
 	for _, c := range q.candidates {
