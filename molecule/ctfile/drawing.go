@@ -3,6 +3,7 @@ package ctfile
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"tarn/molecule"
 )
@@ -21,26 +22,41 @@ type view struct {
 // Pure Appl. Chem. 78, 1897 (2006), ST-1.
 func (t *table) stereoFromDrawing(m *molecule.Molecule, l layout) (*molecule.Molecule, error) {
 	v := &view{table: t, m: m, layout: l}
-	stereo := m.Stereo()
-	used := map[int]bool{}
-	for _, c := range stereo.Centers {
-		used[c.Atom] = true
-		if ends, ok := v.alleneEnds(c.Center); ok {
-			used[ends[0]], used[ends[1]] = true, true
-			v.allene(c.Center, ends)
-			continue
+	// A centre may become one only when others are known (pseudoasymmetric atoms), so it is looked at again.
+	seen, bearers := map[[2]int]bool{}, map[int]bool{}
+	for again := true; again; {
+		again = false
+		stereo := v.m.Stereo()
+		for _, c := range stereo.Centers {
+			if seen[[2]int{c.Atom, -1}] {
+				continue
+			}
+			seen[[2]int{c.Atom, -1}], again = true, true
+			bearers[c.Atom] = true
+			if ends, ok := v.alleneEnds(c.Center); ok {
+				bearers[ends[0]], bearers[ends[1]] = true, true
+				v.allene(c.Center, ends)
+				continue
+			}
+			v.center(c.Center)
 		}
-		v.center(c.Center)
-	}
-	for _, d := range stereo.DoubleBonds {
-		v.doubleBond(d.DoubleBond)
+		for _, d := range stereo.DoubleBonds {
+			if !seen[[2]int{d.A, d.B}] {
+				seen[[2]int{d.A, d.B}], again = true, true
+				v.doubleBond(d.DoubleBond)
+			}
+		}
+		var err error
+		if v.m, err = molecule.New(m.Name, m.Atoms, m.Bonds, slices.Clone(v.centers), slices.Clone(v.doubles)); err != nil {
+			return nil, err
+		}
 	}
 	for i, b := range t.bonds {
-		if l == flat && (b.direction == wedge || b.direction == hash) && !used[b.a] {
+		if l == flat && (b.direction == wedge || b.direction == hash) && !bearers[b.a] {
 			t.note(fmt.Sprintf("the wedge of bond %d begins at atom %d, which is no stereocentre, and says nothing", i+1, b.a+1))
 		}
 	}
-	return molecule.New(m.Name, m.Atoms, m.Bonds, v.centers, v.doubles)
+	return v.m, nil
 }
 
 func (v *view) placed(atom int) bool { return atom >= 0 && atom < len(v.atoms) }
