@@ -76,6 +76,9 @@ func symbolAtom(symbol string) (e molecule.Element, isotope int, ok bool) {
 }
 
 func symbolFault(line, atom int, symbol string) error {
+	if c := symbol[0]; c >= '0' && c <= '9' {
+		return faultf(line, "atom %d has %q where its symbol belongs; is the number of atoms in the counts line right?", atom, symbol)
+	}
 	return faultf(line, "atom %d is %q, which is no element; give a definite molecule without placeholders, "+
 		"atom lists, R groups or lone pairs", atom, symbol)
 }
