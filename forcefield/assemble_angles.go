@@ -70,11 +70,12 @@ func (a *assembly) addAngle(i, j, k, ij, jk int) error {
 		return a.missing("stretch-bend", parameters.ErrNoRule, i, j, k)
 	}
 	a.refer(i, j, k, radians(p.Degrees))
-	a.angles = append(a.angles, angle{
-		i: offset(i), j: offset(j), k: offset(k), reference: radians(p.Degrees), stiffness: millidyne * p.Stiffness,
+	term := angle{
+		i: offset(i), j: offset(j), k: offset(k), stiffness: millidyne * p.Stiffness,
 		first: millidyne * coupling.First, second: millidyne * coupling.Second,
 		firstLength: a.lengths[ij], secondLength: a.lengths[jk],
-	})
+	}
+	a.angles = append(a.angles, term.withReference(radians(p.Degrees)))
 	return nil
 }
 

@@ -74,7 +74,9 @@ func requireDerivatives(t require.TestingT, f surface, x []float64, step float64
 // TestDerivativesOfEachTerm takes each term alone, so that a small one cannot hide behind a large one, in ordinary and in
 // awkward arrangements.
 func TestDerivativesOfEachTerm(t *testing.T) {
-	bend := &MMFF94{atoms: 3, angles: []angle{{0, 3, 6, 1.9, 110, 25, 40, 1.2, 0.9}}}
+	bend := &MMFF94{atoms: 3, angles: []angle{
+		angle{i: 0, j: 3, k: 6, stiffness: 110, first: 25, second: 40, firstLength: 1.2, secondLength: 0.9}.withReference(1.9),
+	}}
 	line := &MMFF94{atoms: 3, linearAngles: []linearAngle{{0, 3, 6, 60}}}
 	wilson := &MMFF94{atoms: 4, outOfPlanes: []outOfPlane{{0, [3]int32{3, 6, 9}, 5}}}
 	twist := &MMFF94{atoms: 4, torsions: []torsion{{0, 3, 6, 9, 1.3, -2.1, 0.7}}}
