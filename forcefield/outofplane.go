@@ -46,12 +46,12 @@ func wilson(stiffness, triple float64, u, v, w vector, iu, iv, iw float64, gu, g
 	}
 	inverse := 1 / math.Sqrt(square)
 	sin := max(-1, min(1, triple*inverse))
-	cos := max(math.Sqrt(1-sin*sin), smallestSin)
-	chi := math.Atan(sin / cos)
-	slope := stiffness * chi
-	toPlane, along := slope*inverse/cos, slope*sin/cos
+	secant := 1 / max(math.Sqrt(1-sin*sin), smallestSin)
+	chi := math.Atan(sin * secant)
+	slope := stiffness * chi * secant
+	toPlane, along := slope*inverse, slope*sin
 	*gw = gw.plus(normal.combine(toPlane*iw, w, -along*iw))
-	along /= square
+	along *= inverse * inverse
 	*gu = gu.plus(v.cross(w).times(toPlane * iu)).plus(u.combine(-along*iu, v, along*cosUV*iu))
 	*gv = gv.plus(w.cross(u).times(toPlane * iv)).plus(v.combine(-along*iv, u, along*cosUV*iv))
 	return stiffness / 2 * chi * chi
