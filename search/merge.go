@@ -26,8 +26,11 @@ func (r *run) merge(t *trail) {
 			c.Broken++
 		case failed:
 			c.Failed++
-		case kept:
-			id := r.identify(o)
+		case kept, known:
+			id := o.id
+			if o.fate == kept {
+				id = r.identify(o)
+			}
 			m := &c.Minima[id]
 			m.Hits++
 			m.LastHitInRound = c.Round
@@ -53,6 +56,7 @@ func (r *run) identify(o *outcome) int {
 		return id
 	}
 	id := r.index.Add(o.x, o.energy)
+	r.rough.Add(o.x, o.energy)
 	r.checkpoint.Minima = append(r.checkpoint.Minima, Minimum{
 		Energy: o.energy, X: o.x, GradientRMS: o.gradientRMS, LowestEigenvalue: o.eigenvalue, FoundInRound: r.checkpoint.Round,
 	})

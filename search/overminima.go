@@ -37,7 +37,7 @@ func (w *walker) minimaWalk(ctx context.Context, start []float64, energy float64
 				shown = hottest
 			}
 			o, err := w.quench(ctx, trial, w.kelvin(shown))
-			if o.fate == kept || o.fate == above {
+			if o.usable() {
 				tried++
 				if o.energy > energy {
 					uphill = append(uphill, o.energy-energy)

@@ -47,6 +47,9 @@ func (r *run) walk(ctx context.Context, pl plan, ceiling float64) (trail, error)
 		quencher: minimize.NewQuencher(r.problem.Field, minimize.Settings{CrudeRMS: crudeRMS}),
 		quota:    pl.quota,
 		ceiling:  ceiling,
+		library:  r.checkpoint.Minima,
+		rough:    r.rough,
+		own:      newRoughIndex(r.problem),
 		reheat:   r.checkpoint.Fruitless,
 		notice:   r.notice,
 		trail:    trail{kind: pl.kind, start: pl.start},
@@ -96,7 +99,7 @@ func (w *walker) begin(ctx context.Context, r *run, pl plan) (x []float64, energ
 		if err != nil {
 			return nil, 0, err
 		}
-		if o.fate == kept || o.fate == above {
+		if o.usable() {
 			return o.x, o.energy, nil
 		}
 	}

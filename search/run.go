@@ -38,7 +38,8 @@ type run struct {
 	problem    *Problem
 	settings   Settings
 	hooks      Hooks
-	index      *dedupe.Index
+	index      *dedupe.Index // of checkpoint.Minima
+	rough      *dedupe.Index // the same with wide tolerances, for geometries on their way to a minimum
 	checkpoint Checkpoint
 
 	began   time.Time
@@ -60,7 +61,9 @@ func Run(ctx context.Context, p *Problem, s Settings, from *Checkpoint, h Hooks)
 	}
 	r := &run{
 		problem: p, settings: s.WithDefaults(p.Cluster()), hooks: h,
-		index: dedupe.NewIndex(p.Symmetry, dedupe.Tolerance{}), began: time.Now(),
+		index: dedupe.NewIndex(p.Symmetry, dedupe.Tolerance{}),
+		rough: newRoughIndex(p),
+		began: time.Now(),
 	}
 	if from != nil {
 		if err := r.goOnFrom(from); err != nil {
@@ -78,12 +81,17 @@ func Run(ctx context.Context, p *Problem, s Settings, from *Checkpoint, h Hooks)
 	}
 }
 
+func newRoughIndex(p *Problem) *dedupe.Index {
+	return dedupe.NewIndex(p.Symmetry, dedupe.Tolerance{Energy: knownEnergy, Distance: knownDistance})
+}
+
 func (r *run) goOnFrom(c *Checkpoint) error {
 	for i := range c.Minima {
 		if n := len(c.Minima[i].X); n != 3*r.problem.Atoms() {
 			return fmt.Errorf("the checkpoint belongs to another molecule: minimum %d has %d coordinates, not %d", i+1, n, 3*r.problem.Atoms())
 		}
 		r.index.Add(c.Minima[i].X, c.Minima[i].Energy)
+		r.rough.Add(c.Minima[i].X, c.Minima[i].Energy)
 	}
 	r.checkpoint = c.clone()
 	r.earlier = c.ElapsedSeconds

@@ -5,6 +5,7 @@ import (
 	"errors"
 	"math/rand/v2"
 
+	"tarn/dedupe"
 	"tarn/minimize"
 	"tarn/molecule"
 )
@@ -14,6 +15,7 @@ type fate int
 
 const (
 	kept     fate = iota // a minimum of the molecule
+	known                // recognised after the crude stage as a minimum of the library
 	above                // dropped after the crude stage, far above the window
 	inverted             // a minimum of another stereoisomer
 	broken               // bonds are gone
@@ -23,6 +25,7 @@ const (
 // outcome is the end of one quench.
 type outcome struct {
 	fate        fate
+	id          int // of a known minimum
 	x           []float64
 	energy      float64
 	gradientRMS float64
@@ -46,15 +49,24 @@ type walker struct {
 	quencher *minimize.Quencher
 	quota    int     // quenches that the walk may still do
 	ceiling  float64 // crude energies above this are dropped
+	library  []Minimum
+	rough    *dedupe.Index // of the library, with wide tolerances; only read while walks run
+	own      *dedupe.Index // of what the walk itself has found, with wide tolerances
+	ownAt    []int         // the outcomes that own holds
 	reheat   int     // fruitless rounds so far
 	notice   func(temperatureK, energy float64, evaluations int) bool
 	trail    trail
 }
 
-// crude is the gradient at which the first stage of a quench ends; from there the energy falls by less than crudeMargin.
 const (
-	crudeRMS    = 0.1 // kcal/mol/Å
-	crudeMargin = 4.0 // kcal/mol
+	// crudeRMS is the gradient at which the first stage of a quench ends, kcal/mol/Å; from there the energy falls by less than crudeMargin.
+	crudeRMS    = 0.01
+	crudeMargin = 1.0 // kcal/mol
+	// A crude geometry this close to a known minimum is on its way there.
+	knownEnergy   = 0.02 // kcal/mol
+	knownDistance = 0.1  // Å
+	// proofShare of those that look known are finished all the same, so that a minimum hidden beside a known one is found.
+	proofShare = 0.1
 )
 
 // errSpent ends a walk whose quota or time is used up.
@@ -69,26 +81,47 @@ func (w *walker) quench(ctx context.Context, x []float64, temperatureK float64) 
 	switch {
 	case err == nil && result.Energy > w.ceiling:
 		o.fate = above
+	case err == nil && w.recognise(&o):
 	case err == nil:
 		result, err = w.quencher.Finish(ctx, result)
 		if err == nil {
 			o = outcome{x: result.X, energy: result.Energy, gradientRMS: result.GradientRMS, eigenvalue: result.LowestEigenvalue}
-			o.fate = w.judge(result.X)
+			if o.fate = w.judge(result.X); o.fate == kept {
+				w.own.Add(o.x, o.energy)
+				w.ownAt = append(w.ownAt, len(w.trail.outcomes))
+			}
 		}
 	}
 	if ctx.Err() != nil {
 		return o, ctx.Err()
 	}
 	w.trail.evaluations += result.Evaluations
-	if o.fate != kept && o.fate != above {
-		o.x = nil
-	}
 	w.trail.outcomes = append(w.trail.outcomes, o)
 	if goOn := w.notice(temperatureK, o.energy, result.Evaluations); !goOn || w.quota <= 0 {
 		return o, errSpent
 	}
 	return o, nil
 }
+
+// recognise takes a crude outcome for the minimum that it is close to, of the library or of the walk itself.
+func (w *walker) recognise(o *outcome) bool {
+	if w.rng.Float64() < proofShare {
+		return false
+	}
+	if id, ok := w.rough.Find(o.x, o.energy); ok {
+		m := &w.library[id]
+		*o = outcome{fate: known, id: id, x: m.X, energy: m.Energy}
+		return true
+	}
+	if at, ok := w.own.Find(o.x, o.energy); ok {
+		*o = w.trail.outcomes[w.ownAt[at]]
+		return true
+	}
+	return false
+}
+
+// usable tells whether a walk can go on from an outcome.
+func (o *outcome) usable() bool { return o.fate == kept || o.fate == known || o.fate == above }
 
 func (w *walker) judge(x []float64) fate {
 	err := w.problem.check(x)
