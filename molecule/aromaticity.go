@@ -159,14 +159,14 @@ func (m *Molecule) orbital(i int, inRing []bool) int {
 	}
 	switch a.Element {
 	case 5:
-		if a.Charge == 0 {
+		if a.Charge == 0 && len(around) == 3 {
 			return 0
 		}
 	case 6:
-		if a.Charge == 1 {
+		if a.Charge == 1 && len(around) == 3 {
 			return 0
 		}
-		if a.Charge == -1 {
+		if a.Charge == -1 && len(around) == 3 {
 			return 2
 		}
 	case 7, 15, 33:

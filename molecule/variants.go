@@ -1,5 +1,7 @@
 package molecule
 
+import "slices"
+
 // standardDrawing returns the molecule with customary drawing variants rewritten to one form, so that they are known as
 // the same molecule: pentavalent nitrogen becomes charge-separated (nitro, N-oxide, azide, diazo), charge-separated
 // sulfur, phosphorus and halogens become hypervalent (sulfoxide, phosphate, perchlorate), isonitriles and carbon monoxide
@@ -56,15 +58,31 @@ func (w *rewriting) order(bond int) int {
 	return w.m.Bonds[bond].Order
 }
 
-// shift changes the order of a bond and the charges of its first named and second named atom.
-func (w *rewriting) shift(bond, order, first, firstCharge, second, secondCharge int) {
-	if w.atoms == nil {
-		w.atoms = append([]Atom(nil), w.m.Atoms...)
-		w.bonds = append([]Bond(nil), w.m.Bonds...)
+// shift changes the order of a bond and the charges of its first named and second named atom, if that leaves both with
+// possible valences; it tells whether it did.
+func (w *rewriting) shift(bond, order, first, firstCharge, second, secondCharge int) bool {
+	if !w.possible(first, order, firstCharge) || !w.possible(second, order, secondCharge) {
+		return false
 	}
+	w.change()
 	w.bonds[bond].Order += order
 	w.atoms[first].Charge += firstCharge
 	w.atoms[second].Charge += secondCharge
+	return true
+}
+
+// change makes the copies that may be changed.
+func (w *rewriting) change() {
+	if w.atoms == nil {
+		w.atoms, w.bonds = slices.Clone(w.m.Atoms), slices.Clone(w.m.Bonds)
+	}
+}
+
+func (w *rewriting) possible(atom, order, charge int) bool {
+	a := w.atom(atom)
+	sum := w.sum(atom) + order
+	allowed := valences(a.Element, a.Charge+charge)
+	return len(allowed) == 0 || sum < allowed[0] || slices.Contains(allowed, sum)
 }
 
 func (w *rewriting) sum(atom int) int {
@@ -118,8 +136,8 @@ func (w *rewriting) chargeIsonitrile(i int) {
 	for _, n := range w.m.neighbors[i] {
 		c := w.atom(n.Atom)
 		order := w.order(n.Bond)
-		if c.Element == 6 && c.Charge == 0 && w.terminal(n.Atom) && w.sum(i) == order+1 && (order == 2 || order == 3) {
-			w.shift(n.Bond, 3-order, i, 1, n.Atom, -1)
+		if c.Element == 6 && c.Charge == 0 && w.terminal(n.Atom) && w.sum(i) == order+1 && (order == 2 || order == 3) &&
+			w.shift(n.Bond, 3-order, i, 1, n.Atom, -1) {
 			w.atoms[n.Atom].Radical = 0
 			return
 		}
@@ -132,8 +150,8 @@ func (w *rewriting) chargeMonoxide(i int) {
 		return
 	}
 	n := w.m.neighbors[i][0]
-	if c := w.atom(n.Atom); c.Element == 6 && c.Charge == 0 && w.terminal(n.Atom) && w.order(n.Bond) == 2 {
-		w.shift(n.Bond, 1, i, 1, n.Atom, -1)
+	if c := w.atom(n.Atom); c.Element == 6 && c.Charge == 0 && w.terminal(n.Atom) && w.order(n.Bond) == 2 &&
+		w.shift(n.Bond, 1, i, 1, n.Atom, -1) {
 		w.atoms[n.Atom].Radical = 0
 	}
 }
@@ -148,11 +166,19 @@ func (w *rewriting) straightenDiazo(i int) {
 		end, anion := w.atom(n.Atom), w.atom(x.Atom)
 		if w.order(n.Bond) == 3 && end.Element == 7 && end.Charge == 0 && w.terminal(n.Atom) &&
 			w.order(x.Bond) == 1 && anion.Charge == -1 && (anion.Element == 6 || anion.Element == 7) {
-			w.shift(n.Bond, -1, n.Atom, -1, i, 0)
-			w.shift(x.Bond, 1, x.Atom, 1, i, 0)
+			w.moveBond(n, x)
 			return
 		}
 	}
+}
+
+// moveBond moves one bond of a triple bond n to the single bond x at the same atom, with the charge the other way.
+func (w *rewriting) moveBond(n, x Neighbor) {
+	w.change()
+	w.bonds[n.Bond].Order--
+	w.bonds[x.Bond].Order++
+	w.atoms[n.Atom].Charge--
+	w.atoms[x.Atom].Charge++
 }
 
 // neutralizeHypervalent turns X(+)–Y(-) into X=Y as long as X is positive, oxygen first.

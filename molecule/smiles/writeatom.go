@@ -65,8 +65,8 @@ func (w *writer) impliesHydrogens(i int) bool {
 		}
 	}
 	if w.aromaticAtoms[i] {
-		if a.Element.String() != "C" {
-			return w.hydrogens[i] == 0
+		if a.Element.String() != "C" && w.hydrogens[i] > 0 {
+			return false // [nH]
 		}
 		if w.doubleInRing(i) {
 			sum++
