@@ -8,8 +8,12 @@ import (
 	"gonum.org/v1/gonum/optimize"
 )
 
-// errStalled says that line searches fail although the gradient is not yet small enough.
-var errStalled = errors.New("line searches fail")
+var (
+	// errStalled says that line searches fail although the gradient is not yet small enough.
+	errStalled = errors.New("line searches fail")
+	// errPaused says that a metric has been used long enough.
+	errPaused = errors.New("the metric is worn out")
+)
 
 // restarts is how often L-BFGS forgets its history and goes on with a shorter step before it is given up.
 const restarts = 4
@@ -61,15 +65,15 @@ func (l *limitedSteps) reach(dir []float64) float64 {
 	return reach(l.dx)
 }
 
-// descend follows L-BFGS from the best point until its rms gradient is at or below target, in the coordinates of the metric unless
-// that is nil. It returns errStalled, the error of ctx, or a NotConvergedError if the budget is spent.
-func (q *Quencher) descend(ctx context.Context, target float64, m *metric) error {
+// descend follows L-BFGS from the best point until its rms gradient is at or below target. It returns errStalled, the error of ctx, or
+// a NotConvergedError if the budget is spent.
+func (q *Quencher) descend(ctx context.Context, target float64) error {
 	limit := q.settings.MaxStep
 	for range restarts {
 		if q.at.rms() <= target {
 			return nil
 		}
-		err := q.descendOnce(ctx, target, limit, m)
+		err := q.descendOnce(ctx, target, limit, nil)
 		if !errors.Is(err, errStalled) {
 			return err
 		}
@@ -78,7 +82,8 @@ func (q *Quencher) descend(ctx context.Context, target float64, m *metric) error
 	return errStalled
 }
 
-// descendOnce returns errStalled if a line search fails or meets an energy that is not finite.
+// descendOnce returns errStalled if a line search fails or meets an energy that is not finite. With a metric it goes in its
+// coordinates, and returns errPaused after useOfMetric evaluations.
 func (q *Quencher) descendOnce(ctx context.Context, target, limit float64, m *metric) error {
 	d := &q.descent
 	// A new LBFGS: gonum does not clear all of the history of the last run.
@@ -92,6 +97,7 @@ func (q *Quencher) descendOnce(ctx context.Context, target, limit float64, m *me
 		m.gradient(m.grad, trial.grad)
 		d.loc.X, d.loc.Gradient = m.y, m.grad
 	}
+	end := q.evaluations + useOfMetric
 	operation, err := d.search.Init(&d.loc)
 	for err == nil {
 		switch operation {
@@ -103,6 +109,9 @@ func (q *Quencher) descendOnce(ctx context.Context, target, limit float64, m *me
 		default:
 			if err := q.mayGoOn(ctx); err != nil {
 				return err
+			}
+			if m != nil && q.evaluations >= end {
+				return errPaused
 			}
 			if m != nil {
 				m.position(trial.x, m.y)

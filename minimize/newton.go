@@ -17,14 +17,19 @@ const (
 	maxHessians = 100
 	// noise is the relative rounding error of an energy: smaller differences say nothing.
 	noise = 1e-12
-	// trust is the reach of a Newton step within which the surface is taken to be quadratic, Å. It hardly matters between 0.05
-	// and 0.4.
-	trust = 0.2
+	// trust is the reach of a Newton step within which the surface is taken to be quadratic, Å. With 0.2 it takes twice as many
+	// Hessians as with 0.002 and saves hardly any evaluations.
+	trust = 0.002
+	// still is the reach of a Newton step, Å, after which the Hessian need not be taken again to know that there is no negative
+	// eigenvalue, provided that the lowest is above firm, kcal/mol/Å².
+	still, firm = 1e-4, 1e-2
 	// softest is the curvature that the softest modes get in a metric, kcal/mol/Å²: torsions, whose curvature changes as they turn,
 	// must not be stretched too far. Values between 1 and 4 need the fewest evaluations for chains of 16 and 24 carbon atoms.
 	softest = 1.0
-	// useOfMetric is the factor by which the gradient falls before a new Hessian is worth its cost.
-	useOfMetric = 0.1
+	// useOfMetric is the number of evaluations after which a new Hessian is worth its cost, that of some 50 evaluations.
+	useOfMetric = 80
+	// metricRMS is the rms gradient from which one Newton step reaches the minimum, kcal/mol/Å.
+	metricRMS = 1e-5
 )
 
 // newton is the workspace of the finish.
@@ -35,7 +40,8 @@ type newton struct {
 	cholesky      mat.Cholesky
 	eigen         mat.EigenSym
 	step          *mat.VecDense
-	lowest        float64
+	lowest        float64 // eigenvalue
+	reach         float64 // of the last step
 	metric        metric
 }
 
@@ -65,38 +71,60 @@ func (q *Quencher) finish(ctx context.Context) (Result, error) {
 	return q.result(), q.notConverged("too many Hessians were taken")
 }
 
-// improve uses the Hessian at the best point and says whether that is a minimum.
+// improve uses the Hessian at the best point and says whether that has become a minimum.
 func (q *Quencher) improve(ctx context.Context) (done bool, err error) {
 	w := &q.newton
-	rms := q.at.rms()
-	converged := rms <= q.settings.GradientRMS
+	before := q.at.rms()
 	definite := w.cholesky.Factorize(w.hessian)
-	if converged || !definite && rms <= saddleRMS {
-		if err := q.diagonalize(!definite); err != nil {
+	if !definite && before <= saddleRMS {
+		if err := q.diagonalize(true); err != nil {
 			return false, err
 		}
-		if !definite && w.lowest < -flat {
+		if w.lowest < -flat {
 			return false, q.leaveSaddle(ctx)
 		}
+		definite = w.stiffen(10*flat - w.lowest)
+	} else if definite && before <= metricRMS {
+		if err := q.diagonalize(false); err != nil {
+			return false, err
+		}
 	}
-	for shift := softest; !definite; shift *= 4 {
-		definite = w.stiffen(shift)
-	}
-	if q.newtonStep(converged) || converged {
-		return converged, nil
-	}
-	w.stiffen(softest)
-	if err := w.metric.set(&w.cholesky); err != nil && !errors.As(err, new(mat.Condition)) {
-		return false, q.notConverged("the Hessian is singular")
-	}
-	err = q.descend(ctx, max(rms*useOfMetric, q.settings.GradientRMS), &w.metric)
-	if errors.Is(err, errStalled) {
-		if q.at.rms() < rms {
+	if definite {
+		moved := q.newtonStep()
+		converged := q.at.rms() <= q.settings.GradientRMS
+		switch {
+		case converged && before <= q.settings.GradientRMS, // moved or not
+			converged && before <= metricRMS && w.reach <= still && w.lowest >= firm:
+			return true, nil
+		case moved:
 			return false, nil
 		}
-		return false, q.notConverged("neither Newton steps nor line searches lower the energy")
 	}
-	return false, err
+	return false, q.descendInMetric(ctx)
+}
+
+// descendInMetric follows L-BFGS in the metric of the Hessian, made positive definite, or in none if that does not help.
+func (q *Quencher) descendInMetric(ctx context.Context) error {
+	w := &q.newton
+	before := q.at.rms()
+	for shift := softest; !w.stiffen(shift); {
+		shift *= 4
+	}
+	err := w.metric.set(&w.cholesky)
+	if err == nil || errors.As(err, new(mat.Condition)) {
+		err = q.descendOnce(ctx, max(metricRMS, q.settings.GradientRMS), q.settings.MaxStep, &w.metric)
+		if !errors.Is(err, errStalled) && !errors.Is(err, errPaused) {
+			return err
+		}
+	}
+	if q.at.rms() < before {
+		return nil
+	}
+	err = q.descend(ctx, max(before/10, q.settings.GradientRMS))
+	if errors.Is(err, errStalled) {
+		return q.notConverged("neither Newton steps nor line searches lower the energy")
+	}
+	return err
 }
 
 // diagonalize finds the lowest eigenvalue of the projected Hessian, and if asked its eigenvectors.
@@ -143,20 +171,21 @@ func (w *newton) stiffen(shift float64) bool {
 	return w.cholesky.Factorize(w.hessian)
 }
 
-// newtonStep tries the step of the factorised Hessian if it is short, and says whether it moved. It must lower the energy, or the
-// gradient if it is for polishing or the gain is lost in rounding.
-func (q *Quencher) newtonStep(polish bool) bool {
+// newtonStep tries the step of the factorised Hessian if it is short, and says whether it moved. The step must lower the energy, or
+// the gradient where the gain is lost in rounding.
+func (q *Quencher) newtonStep() bool {
 	w := &q.newton
 	step := w.step.RawVector().Data
 	err := w.cholesky.SolveVecTo(w.step, mat.NewVecDense(len(step), q.at.grad))
-	if err != nil && !errors.As(err, new(mat.Condition)) || reach(step) > trust {
+	w.reach = reach(step)
+	if err != nil && !errors.As(err, new(mat.Condition)) || !(w.reach <= trust) {
 		return false
 	}
 	floats.Scale(-1, step)
 	slope := floats.Dot(step, q.at.grad)
 	q.tryStep(1, step)
 	lower := q.trial.energy <= q.at.energy+1e-4*slope
-	if polish || -slope < noise*max(1, math.Abs(q.at.energy)) {
+	if -slope < noise*max(1, math.Abs(q.at.energy)) {
 		lower = q.trial.rms() < q.at.rms()
 	}
 	if lower && q.trial.finite() {

@@ -40,7 +40,7 @@ type Result struct {
 	GradientRMS      float64   // kcal/mol/Å, root of the mean square of the 3N components
 	Evaluations      int       // energies with or without gradient, those for finite-difference Hessians included
 	Hessians         int       // exact Hessians, which are not counted above
-	LowestEigenvalue float64   // kcal/mol/Å², of the Hessian without translations and rotations; 0 if nothing else is left
+	LowestEigenvalue float64   // kcal/mol/Å², of the Hessian at X or up to 1e-4 Å before, without translations and rotations; 0 if nothing else is left
 	Saddles          int       // how often it was pushed off a saddle
 }
 
@@ -114,7 +114,7 @@ func (q *Quencher) Crude(ctx context.Context, x []float64) (Result, error) {
 	if err := q.start(x); err != nil {
 		return Result{}, err
 	}
-	err := q.descend(ctx, q.settings.CrudeRMS, nil)
+	err := q.descend(ctx, q.settings.CrudeRMS)
 	if errors.Is(err, errStalled) {
 		err = nil
 	}

@@ -54,7 +54,7 @@ func (q *Quencher) relaxPushed(ctx context.Context, t float64, mode []float64, t
 		return nil
 	}
 	q.accept()
-	if err := q.descend(ctx, target, nil); !errors.Is(err, errStalled) {
+	if err := q.descend(ctx, target); !errors.Is(err, errStalled) {
 		return err
 	}
 	return nil
