@@ -63,7 +63,7 @@ func angleHessian(angles []angle, x, h []float64) {
 	for n := range angles {
 		a := &angles[n]
 		center := place(x, a.j)
-		u, v := variables(place(x, a.i).minus(center), 0), variables(place(x, a.k).minus(center), 1)
+		u, v := armOf(place(x, a.i).minus(center), 0), armOf(place(x, a.k).minus(center), 1)
 		normal := u.cross(&v)
 		square := normal.dot(&normal)
 		uu, vv := u.dot(&u), v.dot(&v)
@@ -118,7 +118,7 @@ func linearAngleHessian(angles []linearAngle, x, h []float64) {
 	for n := range angles {
 		a := &angles[n]
 		center := place(x, a.j)
-		u, v := variables(place(x, a.i).minus(center), 0), variables(place(x, a.k).minus(center), 1)
+		u, v := armOf(place(x, a.i).minus(center), 0), armOf(place(x, a.k).minus(center), 1)
 		uu, vv := u.dot(&u), v.dot(&v)
 		squares := uu.times(&vv)
 		if squares.value == 0 {

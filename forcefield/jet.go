@@ -13,14 +13,83 @@ type jet struct {
 	second [jetSize * (jetSize + 1) / 2]float64 // lower triangle, row by row
 }
 
-// jetVector is a vector of jets.
-type jetVector struct{ x, y, z jet }
+// entry returns the place of the second derivative with respect to variables p and q.
+func entry(p, q int) int {
+	if p < q {
+		p, q = q, p
+	}
+	return p*(p+1)/2 + q
+}
 
-// variables returns v with its components as the variables of the given arm, 0 to 2.
-func variables(v vector, arm int) jetVector {
-	w := jetVector{jet{value: v.x}, jet{value: v.y}, jet{value: v.z}}
-	w.x.first[3*arm], w.y.first[3*arm+1], w.z.first[3*arm+2] = 1, 1, 1
+// jetVector is a vector of jets.
+type jetVector [3]jet
+
+// arm is a vector whose components are the variables 3n, 3n+1 and 3n+2.
+type arm struct {
+	components [3]float64
+	first      int // 3n
+}
+
+// armOf returns v as the arm n, 0 to 2.
+func armOf(v vector, n int) arm { return arm{[3]float64{v.x, v.y, v.z}, 3 * n} }
+
+// jets returns the arm as a vector of jets.
+func (u *arm) jets() jetVector {
+	var w jetVector
+	for c := range w {
+		w[c].value = u.components[c]
+		w[c].first[u.first+c] = 1
+	}
 	return w
+}
+
+// dot returns u·v.
+func (u *arm) dot(v *arm) jet {
+	var a jet
+	for c := range 3 {
+		p, q := u.first+c, v.first+c
+		a.value += u.components[c] * v.components[c]
+		a.first[p] += v.components[c]
+		a.first[q] += u.components[c]
+		a.second[entry(p, q)]++
+		if p == q {
+			a.second[entry(p, q)]++
+		}
+	}
+	return a
+}
+
+// cross returns u×v of two different arms.
+func (u *arm) cross(v *arm) jetVector {
+	var w jetVector
+	for c := range w {
+		p, q := (c+1)%3, (c+2)%3
+		w[c].value = u.components[p]*v.components[q] - u.components[q]*v.components[p]
+		w[c].first[u.first+p], w[c].first[u.first+q] = v.components[q], -v.components[p]
+		w[c].first[v.first+q], w[c].first[v.first+p] = u.components[p], -u.components[q]
+		w[c].second[entry(u.first+p, v.first+q)] = 1
+		w[c].second[entry(u.first+q, v.first+p)] = -1
+	}
+	return w
+}
+
+// dot returns u·v.
+func (u *jetVector) dot(v *jetVector) jet {
+	var a jet
+	for c := range u {
+		b, d := &u[c], &v[c]
+		a.value += b.value * d.value
+		n := 0
+		for p := range jetSize {
+			bp, dp := b.first[p], d.first[p]
+			a.first[p] += b.value*dp + d.value*bp
+			for q := range p + 1 {
+				a.second[n] += b.value*d.second[n] + d.value*b.second[n] + bp*d.first[q] + dp*b.first[q]
+				n++
+			}
+		}
+	}
+	return a
 }
 
 // function holds the value and the partial derivatives of a function of two numbers.
@@ -74,22 +143,6 @@ func polarAngle(s, c *jet) jet {
 	return function{math.Atan2(s.value, c.value), fs, fc, 2 * fs * fc, fc*fc - fs*fs, -2 * fs * fc}.of(s, c)
 }
 
-func (u *jetVector) dot(v *jetVector) jet {
-	x, y, z := u.x.times(&v.x), u.y.times(&v.y), u.z.times(&v.z)
-	x = x.combine(1, &y, 1)
-	return x.combine(1, &z, 1)
-}
-
-func (u *jetVector) cross(v *jetVector) jetVector {
-	return jetVector{minor(&u.y, &u.z, &v.y, &v.z), minor(&u.z, &u.x, &v.z, &v.x), minor(&u.x, &u.y, &v.x, &v.y)}
-}
-
-// minor returns a·d − b·c.
-func minor(a, b, c, d *jet) jet {
-	ad, bc := a.times(d), b.times(c)
-	return ad.combine(1, &bc, -1)
-}
-
 // addTo adds the second derivatives to the Hessian h of n coordinates. The variables are the vectors from the base atom to
 // the others; atoms are given by the offsets of their coordinates.
 func (a *jet) addTo(h []float64, n int, base int32, others ...int32) {
@@ -97,11 +150,7 @@ func (a *jet) addTo(h []float64, n int, base int32, others ...int32) {
 		for t, q := range others {
 			for i := range 3 {
 				for j := range 3 {
-					row, column := 3*s+i, 3*t+j
-					if row < column {
-						row, column = column, row
-					}
-					v := a.second[row*(row+1)/2+column]
+					v := a.second[entry(3*s+i, 3*t+j)]
 					pi, qj, bi, bj := int(p)+i, int(q)+j, int(base)+i, int(base)+j
 					h[pi*n+qj] += v
 					h[pi*n+bj] -= v

@@ -62,9 +62,9 @@ func outOfPlaneHessian(centers []outOfPlane, x, h []float64) {
 	for n := range centers {
 		c := &centers[n]
 		center := place(x, c.center)
-		var arms [3]jetVector
+		var arms [3]arm
 		for m, o := range c.outer {
-			arms[m] = variables(place(x, o).minus(center), m)
+			arms[m] = armOf(place(x, o).minus(center), m)
 		}
 		for m := range arms {
 			u, v, w := &arms[m], &arms[(m+1)%3], &arms[(m+2)%3]
@@ -75,7 +75,8 @@ func outOfPlaneHessian(centers []outOfPlane, x, h []float64) {
 			}
 			scale := square.times(&ww)
 			scale = scale.power(-0.5)
-			triple := normal.dot(w)
+			along := w.jets()
+			triple := normal.dot(&along)
 			sin := triple.times(&scale)
 			s := max(-1, min(1, sin.value))
 			cos := max(math.Sqrt(1-s*s), smallestSin)

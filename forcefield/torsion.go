@@ -58,7 +58,7 @@ func torsionHessian(torsions []torsion, x, h []float64) {
 	for n := range torsions {
 		t := &torsions[n]
 		base := place(x, t.j)
-		toI, toK, toL := variables(place(x, t.i).minus(base), 0), variables(place(x, t.k).minus(base), 1), variables(place(x, t.l).minus(base), 2)
+		toI, toK, toL := armOf(place(x, t.i).minus(base), 0), armOf(place(x, t.k).minus(base), 1), armOf(place(x, t.l).minus(base), 2)
 		p, q := toK.cross(&toI), toK.cross(&toL)
 		pp, qq := p.dot(&p), q.dot(&q)
 		if pp.value < collinear || qq.value < collinear {
