@@ -129,11 +129,12 @@ func (s *structure) explain(parts [][]int, charge int) error {
 		}
 	}
 	remedy := "; give the right charge, and check that no hydrogen is missing"
-	var fitting *whole
+	lowest := 0
 	best := s.assemble(parts, usual)
-	for _, q := range slices.Sorted(maps.Keys(best)) {
-		if fitting == nil || best[q].cost.less(fitting.cost) {
-			fitting = best[q]
+	for k, q := range slices.Sorted(maps.Keys(best)) {
+		// A charge must save more than the drawings of one ion cost to be suggested instead of none.
+		if price := best[q].cost.valence + 5*max(q, -q); k == 0 || price < lowest {
+			lowest = price
 			remedy = fmt.Sprintf("; all valences fit a total charge of %d, give it if it is meant", q)
 		}
 	}

@@ -116,9 +116,9 @@ func (s *structure) settleTerminalNitrogen(atom int) {
 	}
 }
 
-// pairOxides draws N-oxides (nitrones, azoxy compounds, pyridine oxides: a nitrogen with three neighbours, exactly one of them
-// a terminal oxygen) as N⁺–O⁻ at the price of one hypervalent atom. Counted as two charges, the pair would lose against
-// drawings that break an aromatic ring to be rid of it.
+// pairOxides draws the oxides of three-coordinate nitrogen as N⁺–O⁻ at the price of one hypervalent atom: N-oxides, nitrones
+// and azoxy compounds (one terminal oxygen), nitro groups and nitrate (two, three). Counted as two charges, the pair would
+// lose against drawings that break an aromatic ring to be rid of it.
 func (s *structure) pairOxides() {
 	for i, e := range s.elements {
 		if e != 7 || len(s.around[i]) != 3 {
@@ -131,9 +131,13 @@ func (s *structure) pairOxides() {
 				terminal++
 			}
 		}
-		if terminal == 1 {
+		switch terminal {
+		case 0:
+		case 1:
 			s.choices[i] = []state{{extra: 1, charge: 1, cost: 2}, {cost: 8}}
 			s.choices[oxygen] = []state{{charge: -1}, {extra: 1, cost: 40, rank: unusual}, {cost: 200, rank: open}}
+		default:
+			s.choices[i] = []state{{extra: 1, charge: 1, cost: 2}, {cost: 20}}
 		}
 	}
 }
