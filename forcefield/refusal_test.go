@@ -45,6 +45,7 @@ func TestRefusals(t *testing.T) {
 		{"ylide of nitrogen", "N+ CH3 CH3 CH3 CH2-", "1-2 1-3 1-4 1-5", 5, "C", "valence 3 and charge -1"},
 		{"phosphorus pentafluoride", "P F F F F F", "1-2 1-3 1-4 1-5 1-6", 1, "P", "5 bonds"},
 		{"sulfonium", "S+ CH3 CH3 CH3", "1-2 1-3 1-4", 1, "S", "formal charge"},
+		{"aminosulfoxonium", "S+ O CH3 CH3 NH2", "1=2 1-3 1-4 1-5", 1, "S", "formal charge"},
 		{"phosphonium", "P+ CH3 CH3 CH3 CH3", "1-2 1-3 1-4 1-5", 1, "P", "formal charge"},
 		{"hydrogen molecule", "H H", "1-2", 1, "H", "no type for hydrogen"},
 		{"proton", "H+", "", 1, "H", "lone atom H with charge +1"},

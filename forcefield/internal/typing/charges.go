@@ -59,6 +59,9 @@ func (t *typer) shareTerminals(center int, q []float64) {
 			ends = append(ends, n.Atom)
 		}
 	}
+	if total > 0 {
+		return // no terminal atom carries a positive charge; checkCharges refuses the molecule
+	}
 	for _, i := range ends {
 		q[i] = float64(total) / float64(len(ends))
 	}
