@@ -52,7 +52,7 @@ func NewMoleculeProblem(ctx context.Context, m *molecule.Molecule, fieldName str
 	if err := checkSize(m); err != nil {
 		return nil, err
 	}
-	p := &Problem{Molecule: m, FieldName: fieldName}
+	p := &Problem{FieldName: fieldName}
 	switch fieldName {
 	case "":
 		p.FieldName = "mmff94"
@@ -62,7 +62,8 @@ func NewMoleculeProblem(ctx context.Context, m *molecule.Molecule, fieldName str
 	default:
 		return nil, &SettingError{"field", fmt.Sprintf("there is no force field %q; use mmff94 or mmff94s", fieldName)}
 	}
-	if err := p.settleStereo(geometry); err != nil {
+	var err error
+	if p.Molecule, err = Settle(m, geometry); err != nil {
 		return nil, err
 	}
 	f, err := forcefield.NewMMFF94(p.Molecule, forcefield.Options{Static: p.FieldName == "mmff94s"})

@@ -10,37 +10,36 @@ import (
 	"tarn/search/moves"
 )
 
-// settleStereo reads what the molecule leaves open off the geometry, or refuses.
-func (p *Problem) settleStereo(geometry molecule.Geometry) error {
+// Settle returns the molecule with all its stereochemistry decided: what it leaves open is read off the geometry (Å), if there is one,
+// or has only one possibility. Otherwise it returns an *[UnspecifiedError].
+func Settle(m *molecule.Molecule, geometry molecule.Geometry) (*molecule.Molecule, error) {
 	if geometry != nil {
-		if geometry.Atoms() != len(p.Molecule.Atoms) {
-			return fmt.Errorf("the geometry has %d atoms, the molecule %d", geometry.Atoms(), len(p.Molecule.Atoms))
+		if geometry.Atoms() != len(m.Atoms) {
+			return nil, fmt.Errorf("the geometry has %d atoms, the molecule %d", geometry.Atoms(), len(m.Atoms))
 		}
-		if err := p.Molecule.CheckStereo(geometry); err != nil {
-			return fmt.Errorf("the given coordinates: %w", err)
+		if err := m.CheckStereo(geometry); err != nil {
+			return nil, fmt.Errorf("the given coordinates: %w", err)
 		}
 	}
-	open := p.Molecule.Stereo().Unspecified()
+	open := m.Stereo().Unspecified()
 	if open == 0 {
-		return nil
+		return m, nil
 	}
 	if geometry != nil {
-		settled, err := p.Molecule.StereoFromGeometry(geometry)
+		settled, err := m.StereoFromGeometry(geometry)
 		if err != nil {
-			return fmt.Errorf("reading the stereochemistry off the given coordinates: %w", err)
+			return nil, fmt.Errorf("reading the stereochemistry off the given coordinates: %w", err)
 		}
-		p.Molecule = settled
-		return nil
+		return settled, nil
 	}
-	isomers, err := p.Molecule.Stereoisomers()
+	isomers, err := m.Stereoisomers()
 	if err != nil {
-		return err
+		return nil, err
 	}
 	if len(isomers) == 1 {
-		p.Molecule = isomers[0]
-		return nil
+		return isomers[0], nil
 	}
-	return &UnspecifiedError{Open: open, Isomers: isomers}
+	return nil, &UnspecifiedError{Open: open, Isomers: isomers}
 }
 
 // firstTries is how many random geometries are tried before a molecule is given up.
