@@ -10,7 +10,9 @@ const (
 	// slack is how far the low end of the interval may lie below the target (0.95 for 0.99).
 	slack = 0.04
 	// leastRounds is the number of rounds below which nothing is believed.
-	leastRounds = 3
+	leastRounds = 4
+	// recent is the share of the rounds, the last ones, in which hardly anything new may have been found; it is two rounds at least.
+	recent = 0.25
 )
 
 // counts sums up the draws of the minima in the window.
@@ -38,11 +40,25 @@ func coverageOf(c coverage.Counts) Coverage {
 	return Coverage{Estimate: s.Estimate, Low: s.Low, High: s.High, Unseen: c.Chao().Estimate - float64(c.Observed)}
 }
 
-// complete tells whether the evidence suffices: coverage at the target, its low end within slack of it, and fewer unseen minima than the
-// target allows.
+// complete tells whether the evidence suffices: coverage at the target, its low end within slack of it, fewer unseen minima than the
+// target allows, and no more than that found in the last rounds.
 func (r *run) complete(c coverage.Counts) bool {
 	target := r.settings.Coverage
 	now := coverageOf(c)
+	allowed := max(0.5, (1-target)*float64(c.Observed))
 	return r.checkpoint.Round >= leastRounds && c.Draws > 0 &&
-		now.Estimate >= target && now.Low >= target-slack && now.Unseen <= max(0.5, (1-target)*float64(c.Observed))
+		now.Estimate >= target && now.Low >= target-slack && now.Unseen <= allowed && float64(r.foundLately()) <= allowed
+}
+
+// foundLately counts the minima in the window that the last rounds found.
+func (r *run) foundLately() int {
+	top := r.lowest() + r.settings.WindowKcal
+	since := r.checkpoint.Round - max(2, int(recent*float64(r.checkpoint.Round)))
+	count := 0
+	for i := range r.checkpoint.Minima {
+		if m := &r.checkpoint.Minima[i]; m.Energy <= top && m.FoundInRound >= since {
+			count++
+		}
+	}
+	return count
 }
