@@ -36,18 +36,12 @@ type source struct {
 	ended  bool
 	atEOF  bool
 	cut    bool // the line handed out last was too long, its rest is still to be read
-	held   bool // text is handed out once more
-	text   string
 }
 
 func newSource(r io.Reader) *source { return &source{r: bufio.NewReaderSize(r, 1<<16)} }
 
-// next returns the next line of the record without its end, errRecordEnds after the last one, or a *fault.
+// next returns the next line of the record without its end of line, errRecordEnds after the last one, or a *fault.
 func (s *source) next() (string, error) {
-	if s.held {
-		s.held = false
-		return s.text, nil
-	}
 	if s.ended {
 		return "", errRecordEnds
 	}
@@ -62,12 +56,8 @@ func (s *source) next() (string, error) {
 		s.ended = true
 		return "", errRecordEnds
 	}
-	s.text = line
 	return line, nil
 }
-
-// hold makes next return the same line again.
-func (s *source) hold() { s.held = true }
 
 // read returns the next line of the file. A line longer than limit is a fault; the next read begins behind it.
 func (s *source) read(limit int) (string, error) {
@@ -120,7 +110,6 @@ func (s *source) skipRest() error {
 
 // finish goes to the end of the record.
 func (s *source) finish() error {
-	s.held = false
 	for !s.ended {
 		line, err := s.read(maxLine)
 		var tooLong *fault

@@ -156,7 +156,7 @@ func (o *output) setValences() error {
 	sums := make([]int, len(m.Atoms))
 	o.valence = make([]int, len(m.Atoms))
 	for _, b := range m.Bonds {
-		d.Bonds = append(d.Bonds, molecule.DraftBond{A: b.A, B: b.B, Order: b.Order})
+		d.Bonds = append(d.Bonds, molecule.DraftBond(b))
 		sums[b.A] += b.Order
 		sums[b.B] += b.Order
 	}

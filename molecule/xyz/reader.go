@@ -28,7 +28,10 @@ type Reader struct {
 	o      Options
 	line   int // number of the line read last
 	frame  int
-	lost   bool // the number of atoms of the last frame was unreadable: look for the next one
+	lost   bool // the last frame was broken: look for a line with a number of atoms
+	cut    bool // the line read last was too long, its rest is still to be read
+	held   bool // text is to be read once more
+	text   string
 	failed error
 }
 
@@ -52,32 +55,20 @@ func (r *Reader) Read() (*Frame, error) {
 	f := &Frame{Number: r.frame, Line: r.line}
 	title, err := r.next()
 	if err != nil {
-		return nil, r.fault(r.line, ended(err, 0, count))
+		return nil, r.broken(ended(err, 0, count))
 	}
 	f.Title = strings.ToValidUTF8(strings.TrimSpace(title), "\ufffd")
 	var elements []molecule.Element
 	isotopes := map[int]int{}
-	var broken error
-	brokenLine := 0
 	for i := range count {
 		line, err := r.next()
-		if err != nil && !errors.Is(err, errTooLong) {
-			return nil, r.fault(r.line, ended(err, i, count))
-		}
-		if broken != nil {
-			continue
-		}
-		element, isotope, at, atomErr := atomLine(line, i+1)
-		if err == nil {
-			err = atomErr
-		}
 		if err != nil {
-			broken, brokenLine = err, r.line
-			if startsFrame(line) {
-				r.lost = true
-				break
-			}
-			continue
+			return nil, r.broken(ended(err, i, count))
+		}
+		element, isotope, at, err := atomLine(line, i+1)
+		if err != nil {
+			r.held = startsFrame(line) // the next frame begins already
+			return nil, r.broken(err)
 		}
 		if isotope > 0 {
 			isotopes[i] = isotope
@@ -85,15 +76,18 @@ func (r *Reader) Read() (*Frame, error) {
 		elements = append(elements, element)
 		f.Geometry = append(f.Geometry, at[:]...)
 	}
-	if broken != nil {
-		return nil, r.fault(brokenLine, broken)
-	}
 	f.Molecule, f.Notes, err = perceive(elements, isotopes, f.Geometry, r.o.Charge)
 	if err != nil {
 		return nil, r.fault(f.Line, err)
 	}
 	f.Molecule.Name = f.Title
 	return f, nil
+}
+
+// broken is fault at the current line; the next frame is to be looked for.
+func (r *Reader) broken(err error) error {
+	r.lost = true
+	return r.fault(r.line, err)
 }
 
 // fault turns an error of a frame into a *FrameError; the end of the file and errors of the reader stay.
@@ -117,29 +111,36 @@ func (e *readError) Error() string { return e.err.Error() }
 
 var errTooLong = fmt.Errorf("the line is longer than %d bytes; is this an XYZ file?", maxLine)
 
-// next returns the next line without its end. A line that is too long is read to its end.
+// next returns the next line without its end. After a line that is too long the next one begins behind it.
 func (r *Reader) next() (string, error) {
+	if r.held {
+		r.held = false
+		return r.text, nil
+	}
+	for r.cut {
+		_, err := r.lines.ReadSlice('\n')
+		if err != nil && err != io.EOF && err != bufio.ErrBufferFull {
+			return "", &readError{err}
+		}
+		r.cut = err == bufio.ErrBufferFull
+	}
 	piece, err := r.lines.ReadSlice('\n')
-	if len(piece) == 0 && err == io.EOF {
+	switch {
+	case err == io.EOF && len(piece) == 0:
 		return "", io.EOF
-	}
-	r.line++
-	text := string(piece)
-	if err == bufio.ErrBufferFull {
-		for err == bufio.ErrBufferFull {
-			_, err = r.lines.ReadSlice('\n')
-		}
-		if err == nil || err == io.EOF {
-			return "", errTooLong
-		}
-	}
-	if err != nil && err != io.EOF {
+	case err == bufio.ErrBufferFull:
+		r.line++
+		r.cut = true
+		return "", errTooLong
+	case err != nil && err != io.EOF:
 		return "", &readError{err}
 	}
+	r.line++
+	r.text = strings.TrimRight(string(piece), "\r\n")
 	if r.line == 1 {
-		text = strings.TrimPrefix(text, "\ufeff")
+		r.text = strings.TrimPrefix(r.text, "\ufeff")
 	}
-	return strings.TrimRight(text, "\r\n"), nil
+	return r.text, nil
 }
 
 func ended(err error, atoms, count int) error {
@@ -151,40 +152,30 @@ func ended(err error, atoms, count int) error {
 
 // count reads the line with the number of atoms, past blank lines.
 func (r *Reader) count() (int, error) {
-	lost := r.lost
-	counted := false
 	for {
 		line, err := r.next()
-		if err == io.EOF {
+		line = strings.TrimSpace(line)
+		switch {
+		case err == io.EOF:
 			return 0, err
-		}
-		if !lost && !counted && (err != nil || strings.TrimSpace(line) != "") {
-			r.frame++
-			counted = true
-		}
-		if err != nil {
-			r.lost = true
-			return 0, err
-		}
-		if strings.TrimSpace(line) == "" || lost && !startsFrame(line) {
+		case err == nil && line == "", r.lost && errors.Is(err, errTooLong), r.lost && err == nil && !startsFrame(line):
 			continue
 		}
-		if lost {
-			r.frame++
-			r.lost = false
+		r.frame++
+		r.lost = true
+		if err != nil {
+			return 0, err
 		}
-		n, err := strconv.Atoi(strings.TrimSpace(line))
+		n, err := strconv.Atoi(line)
 		switch {
 		case err != nil:
-			r.lost = true
 			return 0, fmt.Errorf("a frame must begin with its number of atoms alone on a line, found %q", shortened(line))
 		case n <= 0:
-			r.lost = true
 			return 0, fmt.Errorf("the frame announces %d atoms; it needs at least one", n)
 		case n > maxAtoms:
-			r.lost = true
 			return 0, fmt.Errorf("the frame announces %d atoms; at most %d can be read", n, maxAtoms)
 		}
+		r.lost = false
 		return n, nil
 	}
 }
