@@ -18,8 +18,8 @@ const (
 	// noise is the relative rounding error of an energy: smaller differences say nothing.
 	noise = 1e-12
 	// trust is the reach of a Newton step within which the surface is taken to be quadratic, Å. With 0.2 it takes twice as many
-	// Hessians as with 0.002 and saves hardly any evaluations.
-	trust = 0.002
+	// Hessians as with 0.002 and saves hardly any evaluations. Below metricRMS only soft modes are left, and softTrust holds.
+	trust, softTrust = 0.002, 0.2
 	// still is the reach of a Newton step, Å, after which the Hessian need not be taken again to know that there is no negative
 	// eigenvalue, provided that the lowest is above firm, kcal/mol/Å².
 	still, firm = 1e-4, 1e-2
@@ -27,7 +27,7 @@ const (
 	// must not be stretched too far. Values between 1 and 4 need the fewest evaluations for chains of 16 and 24 carbon atoms.
 	softest = 1.0
 	// useOfMetric is the number of evaluations after which a new Hessian is worth its cost, that of some 50 evaluations.
-	useOfMetric = 80
+	useOfMetric = 60
 	// metricRMS is the rms gradient from which one Newton step reaches the minimum, kcal/mol/Å.
 	metricRMS = 1e-5
 )
@@ -90,7 +90,11 @@ func (q *Quencher) improve(ctx context.Context) (done bool, err error) {
 		}
 	}
 	if definite {
-		moved := q.newtonStep()
+		within := trust
+		if before <= metricRMS {
+			within = softTrust
+		}
+		moved := q.newtonStep(within)
 		converged := q.at.rms() <= q.settings.GradientRMS
 		switch {
 		case converged && before <= q.settings.GradientRMS, // moved or not
@@ -112,7 +116,8 @@ func (q *Quencher) descendInMetric(ctx context.Context) error {
 	}
 	err := w.metric.set(&w.cholesky)
 	if err == nil || errors.As(err, new(mat.Condition)) {
-		err = q.descendOnce(ctx, max(metricRMS, q.settings.GradientRMS), q.settings.MaxStep, &w.metric)
+		target := max(min(metricRMS, before/10), q.settings.GradientRMS)
+		err = q.descendOnce(ctx, target, q.settings.MaxStep, &w.metric)
 		if !errors.Is(err, errStalled) && !errors.Is(err, errPaused) {
 			return err
 		}
@@ -171,14 +176,14 @@ func (w *newton) stiffen(shift float64) bool {
 	return w.cholesky.Factorize(w.hessian)
 }
 
-// newtonStep tries the step of the factorised Hessian if it is short, and says whether it moved. The step must lower the energy, or
+// newtonStep tries the step of the factorised Hessian if its reach is within a limit, and says whether it moved. The step must lower the energy, or
 // the gradient where the gain is lost in rounding.
-func (q *Quencher) newtonStep() bool {
+func (q *Quencher) newtonStep(within float64) bool {
 	w := &q.newton
 	step := w.step.RawVector().Data
 	err := w.cholesky.SolveVecTo(w.step, mat.NewVecDense(len(step), q.at.grad))
 	w.reach = reach(step)
-	if err != nil && !errors.As(err, new(mat.Condition)) || !(w.reach <= trust) {
+	if err != nil && !errors.As(err, new(mat.Condition)) || !(w.reach <= within) {
 		return false
 	}
 	floats.Scale(-1, step)

@@ -12,7 +12,7 @@ import (
 // Settings of a quench; the zero value is the default.
 type Settings struct {
 	GradientRMS    float64 // kcal/mol/Å, where the finish stops; 0 stands for 1e-6
-	CrudeRMS       float64 // kcal/mol/Å, where the crude stage stops; 0 stands for 0.1
+	CrudeRMS       float64 // kcal/mol/Å, where the crude stage stops; 0 stands for 0.3
 	MaxEvaluations int     // energy evaluations of both stages together; 0 stands for 5000 and 60 more an atom
 	MaxStep        float64 // Å, the farthest that an atom moves in one step; 0 stands for 0.3
 }
@@ -22,7 +22,7 @@ func (s Settings) withDefaults(atoms int) Settings {
 		s.GradientRMS = 1e-6
 	}
 	if s.CrudeRMS == 0 {
-		s.CrudeRMS = 0.1
+		s.CrudeRMS = 0.3
 	}
 	if s.MaxEvaluations == 0 {
 		s.MaxEvaluations = 5000 + 60*atoms

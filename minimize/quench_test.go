@@ -27,6 +27,17 @@ func (c *counted) Energy(x, grad []float64) float64 {
 	return c.Field.Energy(x, grad)
 }
 
+// countedExactly does so for a field with a Hessian.
+type countedExactly struct {
+	counted
+	hessians int
+}
+
+func (c *countedExactly) Hessian(x, h []float64) {
+	c.hessians++
+	c.Field.(Hessian).Hessian(x, h)
+}
+
 func lennardJones(t testing.TB, n int) *forcefield.LennardJones {
 	f, err := forcefield.NewLennardJones(n)
 	require.NoError(t, err)
@@ -183,6 +194,19 @@ func TestQuenchOnFlatPotentials(t *testing.T) {
 	}
 }
 
+// However soft the torsion is, it takes few Hessians to come to its minimum.
+func TestQuenchOfSoftModes(t *testing.T) {
+	for _, barrier := range []float64{1e-1, 1e-2, 1e-3, 1e-4, 3e-5} {
+		for _, start := range []float64{0.1, 0.5, 1} {
+			f := exactly{chain(cosineTwist(barrier, 3))}
+			r, err := Quench(context.Background(), f, chainGeometry(start), Settings{})
+			require.NoError(t, err, barrier)
+			require.InDelta(t, 0, r.Energy, barrier/100, barrier)
+			require.Less(t, r.Hessians, 20, barrier)
+		}
+	}
+}
+
 func TestQuenchOfSmallestSystems(t *testing.T) {
 	atom := &valence{atoms: 1}
 	r, err := Quench(context.Background(), atom, []float64{1, 2, 3}, Settings{})
@@ -227,15 +251,17 @@ func TestQuenchCountsEvaluations(t *testing.T) {
 		differences := &counted{Field: f}
 		r, err := Quench(context.Background(), differences, x, Settings{})
 		require.NoError(t, err)
-		// Those for Hessians go to the field past the counter of HessianAt as well, because both are one path.
-		require.Equal(t, differences.energies, r.Evaluations)
+		require.Equal(t, differences.energies, r.Evaluations, "those for finite differences included")
+		require.Greater(t, r.Evaluations, 6*f.Atoms())
 		require.Zero(t, r.Hessians)
 
-		exact, err := Quench(context.Background(), f, x, Settings{})
+		exact := &countedExactly{counted: counted{Field: f}}
+		again, err := Quench(context.Background(), exact, x, Settings{})
 		require.NoError(t, err)
-		require.Positive(t, exact.Hessians)
-		require.InDelta(t, r.Energy, exact.Energy, 1e-8)
-		require.Equal(t, r.Evaluations, exact.Evaluations+exact.Hessians*6*f.Atoms())
+		require.Equal(t, exact.energies, again.Evaluations)
+		require.Equal(t, exact.hessians, again.Hessians)
+		require.Positive(t, again.Hessians)
+		require.InDelta(t, r.Energy, again.Energy, 1e-8)
 	}
 }
 
@@ -250,7 +276,7 @@ func TestCrudeThenFinish(t *testing.T) {
 
 	crude, err := q.Crude(context.Background(), x)
 	require.NoError(t, err)
-	require.LessOrEqual(t, crude.GradientRMS, 0.1)
+	require.LessOrEqual(t, crude.GradientRMS, 0.3)
 	require.Zero(t, crude.Hessians)
 	require.Zero(t, crude.LowestEigenvalue, "not that of the quench before")
 	require.Less(t, crude.Evaluations, whole.Evaluations)
@@ -352,7 +378,7 @@ func TestQuenchErrors(t *testing.T) {
 
 // canceling ends the context during an evaluation.
 type canceling struct {
-	counted
+	countedExactly
 	at     int
 	cancel context.CancelFunc
 }
@@ -361,14 +387,14 @@ func (c *canceling) Energy(x, grad []float64) float64 {
 	if c.energies == c.at {
 		c.cancel()
 	}
-	return c.counted.Energy(x, grad)
+	return c.countedExactly.Energy(x, grad)
 }
 
 func TestQuenchStopsWithItsContext(t *testing.T) {
 	x := scattered(13, rand.New(rand.NewPCG(6, 6)))
 	for _, at := range []int{0, 1, 50} {
 		ctx, cancel := context.WithCancel(context.Background())
-		f := &canceling{counted: counted{Field: lennardJones(t, 13)}, at: at, cancel: cancel}
+		f := &canceling{countedExactly: countedExactly{counted: counted{Field: lennardJones(t, 13)}}, at: at, cancel: cancel}
 		r, err := Quench(ctx, f, x, Settings{})
 		require.ErrorIs(t, err, context.Canceled)
 		require.LessOrEqual(t, f.energies, at+1)
