@@ -15,6 +15,7 @@ type proposal struct {
 	propose func(x []float64, amount float64, rng *rand.Rand)
 
 	tried, accepted int // since the step was last tuned
+	tunings         int
 }
 
 // metropolis samples exp(-E/kT) in Cartesian coordinates (N. Metropolis et al., J. Chem. Phys. 21, 1087 (1953)). Each move picks a kind by
@@ -87,6 +88,9 @@ func (m *metropolis) move() {
 	}
 }
 
+// leastGain is how strongly a step still follows the acceptance after long tuning, so that it can follow the temperature.
+const leastGain = 0.2
+
 // tune brings the step nearer to the target acceptance. It is done while a stage equilibrates and never while it is sampled: a step that
 // depends on the walk breaks detailed balance.
 func (p *proposal) tune() {
@@ -95,7 +99,9 @@ func (p *proposal) tune() {
 		return
 	}
 	rate := float64(p.accepted) / float64(p.tried)
-	p.step = min(p.most, max(p.most/1000, p.step*math.Exp(rate-targetAcceptance)))
+	p.tunings++
+	gain := max(leastGain, 1/math.Sqrt(float64(p.tunings)))
+	p.step = min(p.most, max(p.most/1000, p.step*math.Exp(gain*(rate-targetAcceptance))))
 	p.tried, p.accepted = 0, 0
 }
 

@@ -133,7 +133,7 @@ func TestDetailedBalanceShifts(t *testing.T) {
 	}
 	m := newMetropolis(energy, make([]float64, 3*atoms), clusterProposals(atoms), rand.New(rand.NewPCG(2, 9)))
 	m.kT = kT
-	mean := sampled(m, 300_000, energy)
+	mean := sampled(m, 2_000_000, energy)
 	require.InDelta(t, 3*atoms*kT/2, mean, 0.03)
 }
 

@@ -49,29 +49,39 @@ func (p *Problem) quotaOf() int {
 	return min(60, 8+3*p.moves.Freedom())
 }
 
-// plan makes the plans of the next round from the checkpoint and the seed alone. Of every four starts one is the lowest minimum or, by
-// Boltzmann-like chance, one near it; one is the minimum in the window that was drawn least often; one is any minimum in the window; and
-// one is built anew, by distance geometry or as a random cluster. The first round builds all anew.
+// fewMinima is the number of minima in the window up to which walks are short and more of them start anew: walks among so few say little
+// about others, however long they are.
+const fewMinima = 3
+
+// plan makes the plans of the next round from the checkpoint and the seed alone. Of every four starts one is the lowest minimum or, with
+// falling chance, one near it; one is a minimum in the window that was drawn least often; one is any minimum in the window; and
+// one is built anew, by distance geometry or as a random cluster. The first round builds all anew, and so do those that know one minimum.
 func (r *run) plan() []plan {
 	rng := walkStream(r.settings.Seed, r.checkpoint.Round, choiceWalk)
 	inWindow := r.inWindow()
 	available := kinds(r.settings.Method)
 	left := r.settings.MaxQuenches - r.checkpoint.Quenches
+	length := r.problem.quotaOf()
+	if n := len(inWindow); 0 < n && n <= fewMinima && !r.problem.Cluster() {
+		length = min(length, 4+4*n)
+	}
 	plans := make([]plan, 0, walksInRound)
 	for number := range walksInRound {
-		quota := min(r.problem.quotaOf(), (left+walksInRound-1-number)/walksInRound)
+		quota := min(length, (left+walksInRound-1-number)/walksInRound)
 		if quota <= 0 {
 			break
 		}
 		pl := plan{number: number, kind: available[number%len(available)], start: -1, quota: quota}
-		if len(inWindow) > 0 {
+		if len(inWindow) > 1 {
 			switch (number / 2) % 4 {
 			case 0:
 				pl.start = inWindow[lowRank(len(inWindow), rng)]
 			case 1:
 				pl.start = r.leastDrawn(inWindow, number%2, rng)
 			case 2:
-				pl.start = inWindow[rng.IntN(len(inWindow))]
+				if len(inWindow) > fewMinima {
+					pl.start = inWindow[rng.IntN(len(inWindow))]
+				}
 			}
 		}
 		plans = append(plans, pl)
