@@ -10,7 +10,7 @@ func (g *graph) angleRange(ref Field, i, j, k int, slack float64) (low, high flo
 	ring := g.ringThrough(i, j, k)
 	if g.linear[j] {
 		if ring == 0 {
-			return 174 * degree, math.Pi
+			return 178 * degree, math.Pi
 		}
 		return (180 - 12*slack - 120/float64(ring)) * degree, math.Pi
 	}
@@ -18,11 +18,11 @@ func (g *graph) angleRange(ref Field, i, j, k int, slack float64) (low, high flo
 		return 70 * degree, math.Pi
 	}
 	theta := ref.ReferenceAngle(i, j, k) / degree
-	below, above := 4.0, 4.0
+	below, above := 4.0, 7.0 // crowded chains are wider than their reference, hardly ever narrower
 	switch smallest := g.smallestRingAt(j); {
 	case g.planar[j]:
 		theta = g.planarAngle(ref, i, j, k)
-		below, above = 5, 5
+		below, above = 5, 8
 	case ring == 3:
 		theta = 60
 	case ring == 4:

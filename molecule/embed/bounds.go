@@ -78,7 +78,8 @@ func (c *constraints) boundAngles(ref Field, slack float64) {
 	}
 }
 
-// contact returns the lower bound of two atoms that no bond, angle or torsion ties.
+// contact returns the lower bound of two atoms that no bond, angle or torsion ties. The shares of the van der Waals radii are
+// common practice (no source).
 func (c *constraints) contact(i, j int) float64 {
 	if c.acidic(i) && c.acceptor(j) || c.acidic(j) && c.acceptor(i) {
 		return hydrogenBond
@@ -104,7 +105,7 @@ func (c *constraints) acidic(i int) bool {
 
 func (c *constraints) acceptor(i int) bool {
 	switch c.Atoms[i].Element {
-	case nitrogen, oxygen, sulfur, 9, 17, 35, 53:
+	case nitrogen, oxygen, sulfur, fluorine, chlorine, bromine, iodine:
 		return true
 	}
 	return false

@@ -13,7 +13,6 @@ const (
 	angleTolerance   = 0.15 // of the distance of two atoms that share a neighbour
 	contactTolerance = 0.25 // of any other distance
 	volumeTolerance  = 0.5  // of the volume asked for at a stereocentre
-	flatTolerance    = 35.0 // degrees out of plane at a specified double bond outside rings
 )
 
 // check returns an error that names the first violation that a quench could not be trusted to heal.
@@ -21,17 +20,14 @@ func (d *draw) check(g molecule.Geometry) error {
 	for i := range d.n {
 		for j := range i {
 			r, l, u := g.Distance(i, j), d.lower[i*d.n+j], d.upper[i*d.n+j]
-			allowed := contactTolerance * u
+			shorter, longer := contactTolerance*l, contactTolerance*u
 			switch d.hops[i][j] {
 			case 1:
-				allowed = bondTolerance
+				shorter, longer = bondTolerance, bondTolerance
 			case 2:
-				allowed = angleTolerance * u
-			case 3:
-			default:
-				allowed = contactTolerance * l
+				shorter, longer = angleTolerance*l, angleTolerance*u
 			}
-			if !(r > l-allowed && r < u+allowed) {
+			if r < l-shorter || r > u+longer || math.IsNaN(r) {
 				return fmt.Errorf("atoms %d and %d are %.2f Å apart, not %.2f to %.2f", i+1, j+1, r, l, u)
 			}
 		}
@@ -43,8 +39,9 @@ func (d *draw) check(g molecule.Geometry) error {
 func (d *draw) stereo(g molecule.Geometry) error {
 	for _, v := range d.volumes {
 		size := signedVolume(g, v.atoms)
-		if math.IsInf(v.high, 1) && size < volumeTolerance*v.low || math.IsInf(v.low, -1) && size > volumeTolerance*v.high {
-			return fmt.Errorf("the stereocentre at atoms %d, %d, %d, %d is inverted or flat (%.2f Å³, bounds %.2f to %.2f)", v.atoms[0]+1, v.atoms[1]+1, v.atoms[2]+1, v.atoms[3]+1, size, v.low, v.high)
+		if !v.plane && (size < volumeTolerance*v.low || size > volumeTolerance*v.high) {
+			return fmt.Errorf("the stereocentre with neighbours %d, %d, %d and %d is inverted or flat",
+				v.atoms[0]+1, v.atoms[1]+1, v.atoms[2]+1, v.atoms[3]+1)
 		}
 	}
 	for _, db := range d.DoubleBonds {

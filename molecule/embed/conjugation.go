@@ -21,7 +21,7 @@ const usualSide = 0.9
 // boundConjugation keeps the bond between a carbonyl carbon and a planar nitrogen or an ester oxygen flat outside small
 // rings, and records the choice between its two sides.
 func (c *constraints) boundConjugation(b int, slack float64, angle func(i, j, k int) [2]float64) {
-	if c.Bonds[b].Order != 1 || c.aromaticBond[b] || (c.bondRing[b] > 0 && c.bondRing[b] <= smallRing) {
+	if c.Bonds[b].Order != 1 || c.aromaticBond[b] || c.bondRing[b] > 0 {
 		return
 	}
 	j, k := c.Bonds[b].A, c.Bonds[b].B

@@ -24,6 +24,9 @@ var ErrNoGeometry = errors.New("no geometry found that fits the molecule and its
 // Tries is how often one call draws before it gives up.
 const Tries = 10
 
+// MaxAtoms is the size up to which geometries are made; the time grows with the cube of the number of atoms.
+const MaxAtoms = 1000
+
 // Embed returns a random 3D geometry of a connected molecule. Specified stereocentres and double bonds come out as
 // specified, the others either way; no bond passes through a ring. ref nil stands for covalent radii and ideal angles. The
 // same state of rng gives the same geometry; calls in a row give different ones. Use [New] to draw many geometries of one
@@ -43,14 +46,17 @@ type Embedder struct {
 	lenient func() *constraints // wider angles and torsions, for strained cages; made when they are needed
 }
 
-// New prepares the bounds and the stereo constraints of a molecule. It returns an error if the molecule has no atoms or
-// more than one fragment. ref nil stands for covalent radii and ideal angles.
+// New prepares the bounds and the stereo constraints of a molecule. It returns an error if the molecule has no atoms, more
+// than one fragment or more than [MaxAtoms]. ref nil stands for covalent radii and ideal angles.
 func New(m *molecule.Molecule, ref Field) (*Embedder, error) {
 	switch parts := m.Fragments(); {
 	case len(parts) == 0:
 		return nil, errors.New("the molecule has no atoms: there is nothing to place")
 	case len(parts) > 1:
 		return nil, fmt.Errorf("the molecule has %d fragments (atom %d is not connected to atom 1): choose one of them", len(parts), parts[1][0]+1)
+	}
+	if len(m.Atoms) > MaxAtoms {
+		return nil, fmt.Errorf("the molecule has %d atoms; first geometries are made for up to %d: give coordinates with it", len(m.Atoms), MaxAtoms)
 	}
 	g := newGraph(m)
 	if ref == nil {
@@ -104,7 +110,7 @@ const (
 	tolerable = 0.07  // taken when enough candidates have been compared
 	enough    = 3
 	// strictTries are made with bounds of the usual width.
-	strictTries = 4
+	strictTries = 6
 	// lenience is how many times wider the ranges of angles are for the other tries.
 	lenience = 2.5
 )

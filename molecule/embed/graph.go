@@ -41,6 +41,7 @@ func newGraph(m *molecule.Molecule) *graph {
 	return g
 }
 
+// hopsFrom returns the number of bonds between an atom and every other, capped at far.
 func (g *graph) hopsFrom(start int) []uint8 {
 	hops := make([]uint8, len(g.Atoms))
 	for i := range hops {
@@ -135,6 +136,7 @@ func (g *graph) besideCarbonyl(i int) bool {
 	return false
 }
 
+// isCarbonyl says whether c is a carbon with a double bond to O, S or N at another atom than except.
 func (g *graph) isCarbonyl(c, except int) bool {
 	if g.Atoms[c].Element != carbon || len(g.Neighbors(c)) != 3 {
 		return false
@@ -178,5 +180,9 @@ const (
 	carbon   molecule.Element = 6
 	nitrogen molecule.Element = 7
 	oxygen   molecule.Element = 8
+	fluorine molecule.Element = 9
 	sulfur   molecule.Element = 16
+	chlorine molecule.Element = 17
+	bromine  molecule.Element = 35
+	iodine   molecule.Element = 53
 )

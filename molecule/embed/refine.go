@@ -11,16 +11,18 @@ import (
 // stage is one minimisation of the error function.
 type stage struct {
 	dimensions int
-	volumes    float64 // weight of the signed volumes
+	centers    float64 // weight of the volumes of stereocentres
+	planes     float64 // weight of the volumes of planar groups
 	fourth     float64 // weight of the squared fourth coordinate, Å⁻²
 	iterations int
 }
 
-// stages: find the right neighbourhoods in four dimensions, press the molecule flat into three, and settle.
+// stages: find the right neighbourhoods in four dimensions, press the molecule flat into three, and settle. Planes come last:
+// they would hold a double bond on the wrong side.
 var stages = []stage{
-	{dimensions: 4, volumes: 1, fourth: 0.02, iterations: 250},
-	{dimensions: 4, volumes: 1, fourth: 1, iterations: 150},
-	{dimensions: 3, volumes: 1, iterations: 300},
+	{dimensions: 4, centers: 1, fourth: 0.02, iterations: 250},
+	{dimensions: 4, centers: 1, planes: 0.1, fourth: 1, iterations: 150},
+	{dimensions: 3, centers: 1, planes: 1, iterations: 300},
 }
 
 // settled is the gradient (error per Å) below which a stage has converged.

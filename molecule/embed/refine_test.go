@@ -15,9 +15,9 @@ func TestErrorFunctionGradient(t *testing.T) {
 	require.NoError(t, err)
 	rng := rand.New(rand.NewPCG(1, 1))
 	d := e.strict.choose(rng)
-	d.constraints.volumes = append(d.constraints.volumes, volume{atoms: [4]int{0, 2, 4, 5}, low: 3, high: math.Inf(1), scale: 6})
+	d.volumes = append(d.volumes, volume{atoms: [4]int{0, 2, 4, 5}, low: 3, high: math.Inf(1), scale: 6})
 	for _, dim := range []int{3, 4} {
-		f := errorFunction{draw: d, stage: stage{dimensions: dim, volumes: 0.7, fourth: 0.3}}
+		f := errorFunction{draw: d, stage: stage{dimensions: dim, centers: 0.7, planes: 0.4, fourth: 0.3}}
 		x := d.randomStart(rng)[:dim*d.n]
 		grad, scratch := make([]float64, len(x)), make([]float64, len(x))
 		f.evaluate(x, grad)

@@ -19,7 +19,7 @@ type draw struct {
 // Source: Crippen & Havel (1988), chapter 6.
 func (d *draw) metricStart(rng *rand.Rand) []float64 {
 	n := d.n
-	if n < 5 {
+	if n < 5 || n > largestMetric {
 		return d.randomStart(rng)
 	}
 	squared := make([]float64, n*n)
@@ -60,6 +60,9 @@ func (d *draw) metricStart(rng *rand.Rand) []float64 {
 	}
 	return x
 }
+
+// largestMetric is the number of atoms above which the eigenvalues cost more than they help.
+const largestMetric = 300
 
 // randomStart spreads the atoms over a four-dimensional box as wide as the molecule is thick when it is folded.
 func (d *draw) randomStart(rng *rand.Rand) []float64 {

@@ -7,8 +7,10 @@ import "math"
 var ringTorsion = map[int]float64{4: 40, 5: 58, 6: 80, 7: 105, 8: 135, 9: 160}
 
 const (
-	flat      = 12.0 // degrees by which a double bond or aromatic bond may be twisted
-	bentFlat  = 50.0 // the same in rings of 8 to smallRing: trans-cyclooctene is twisted by 40° (Traetteberg, 1975)
+	flat     = 12.0 // degrees by which a double bond or aromatic bond may be twisted
+	bentFlat = 50.0 // the same in rings of 8 to smallRing: trans-cyclooctene is twisted by 44° (Traetteberg,
+	// Acta Chem. Scand. B 29, 29 (1975), from memory)
+	opened    = 4.0  // degrees by which angles on the same side of a double bond exceed the middle of their range
 	staggered = 40.0 // degrees: smallest torsion at a single bond between four-coordinate atoms outside rings
 )
 
@@ -48,10 +50,8 @@ func (c *constraints) boundTorsions(ref Field, slack float64) {
 				low, high := c.torsionRange(b, i, l, s, slack)
 				q := quad{c.bondLength(i, j), c.length[b], c.bondLength(k, l), angle(i, j, k), angle(j, k, l)}
 				near, distant := q.range14(low, high)
-				if s.known && low > 0 {
-					near = q.middle().distance(low)
-				} else if s.known {
-					distant = q.middle().distance(high)
+				if s.known && (c.bondRing[b] == 0 || c.bondRing[b] > 7) {
+					near, distant = keepSide(q, low, high)
 				}
 				if pair := [2]int{min(i, l), max(i, l)}; done[pair] {
 					c.narrow(i, l, near, distant)
@@ -75,6 +75,18 @@ func (c *constraints) boundTorsions(ref Field, slack float64) {
 }
 
 func (c *constraints) bondLength(i, j int) float64 { return c.length[c.BondBetween(i, j)] }
+
+// keepSide returns the range of i–l at a double bond with a descriptor. The slack of the angles must not let one side pass for
+// the other, so the end that faces the other side is taken at the middle of the angles, a little opened.
+func keepSide(q quad, low, high float64) (near, distant float64) {
+	near, distant = q.range14(low, high)
+	if low > 0 {
+		near = math.Max(near, q.middle(opened*degree).distance(low))
+	} else {
+		distant = math.Min(distant, q.middle(opened*degree).distance(high))
+	}
+	return near, distant
+}
 
 // torsionRange returns the range in radians of the magnitude of the torsion angle i–j–k–l about bond b.
 func (c *constraints) torsionRange(b, i, l int, s side, slack float64) (low, high float64) {
@@ -206,7 +218,7 @@ func (c *constraints) boundCumulene(chain []int, angle func(i, j, k int) [2]floa
 			}
 			if c.hops[i][l] > 3 {
 				// over a long axis the sides differ less than the slack of the angles, so these are held at their middle
-				q := quad{c.bondLength(i, j), axis, c.bondLength(k, l), angle(i, j, chain[1]), angle(chain[last-1], k, l)}.middle()
+				q := quad{c.bondLength(i, j), axis, c.bondLength(k, l), angle(i, j, chain[1]), angle(chain[last-1], k, l)}.middle(0)
 				c.set(i, l, q.distance(low), q.distance(high))
 			}
 		}
@@ -231,9 +243,9 @@ func (q quad) range14(low, high float64) (near, distant float64) {
 	return near, distant
 }
 
-// middle returns the same chain with its angles fixed in the middle of their ranges.
-func (q quad) middle() quad {
-	j, k := (q.j[0]+q.j[1])/2, (q.k[0]+q.k[1])/2
+// middle returns the same chain with its angles fixed in the middle of their ranges, plus an angle in radians.
+func (q quad) middle(plus float64) quad {
+	j, k := (q.j[0]+q.j[1])/2+plus, (q.k[0]+q.k[1])/2+plus
 	q.j, q.k = [2]float64{j, j}, [2]float64{k, k}
 	return q
 }

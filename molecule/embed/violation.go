@@ -36,8 +36,8 @@ func (e *errorFunction) evaluate(x, grad []float64) float64 {
 	} else {
 		total = e.distances3(x, grad)
 	}
-	for i := range e.constraints.volumes {
-		total += e.volumeTerm(&e.constraints.volumes[i], x, grad)
+	for i := range e.volumes {
+		total += e.volumeTerm(&e.volumes[i], x, grad)
 	}
 	return total
 }
@@ -126,7 +126,11 @@ func (e *errorFunction) volumeTerm(v *volume, x, grad []float64) float64 {
 	default:
 		return 0
 	}
-	slope := 2 * e.stage.volumes * excess / (v.scale * v.scale)
+	weight := e.centers / (v.scale * v.scale)
+	if v.plane {
+		weight = e.planes / (v.scale * v.scale)
+	}
+	slope := 2 * weight * excess
 	vx, vy, vz := cy*az-cz*ay, cz*ax-cx*az, cx*ay-cy*ax // c × a
 	wx, wy, wz := ay*bz-az*by, az*bx-ax*bz, ax*by-ay*bx // a × b
 	ga, gb, gc, g0 := grad[dim*v.atoms[1]:], grad[dim*v.atoms[2]:], grad[dim*v.atoms[3]:], grad[dim*v.atoms[0]:]
@@ -136,5 +140,5 @@ func (e *errorFunction) volumeTerm(v *volume, x, grad []float64) float64 {
 		gc[k] += slope * t[2]
 		g0[k] -= slope * (t[0] + t[1] + t[2])
 	}
-	return e.stage.volumes * excess * excess / (v.scale * v.scale)
+	return weight * excess * excess
 }

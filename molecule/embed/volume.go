@@ -11,6 +11,7 @@ type volume struct {
 	atoms     [4]int
 	low, high float64
 	scale     float64 // what counts as a violation of one unit
+	plane     bool    // a planar group, not a stereocentre
 }
 
 const (
@@ -23,7 +24,7 @@ const (
 )
 
 func planarVolume(a, b, c, d int, slack float64) volume {
-	return volume{atoms: [4]int{a, b, c, d}, low: -slack, high: slack, scale: planarScale}
+	return volume{atoms: [4]int{a, b, c, d}, low: -slack, high: slack, scale: planarScale, plane: true}
 }
 
 // fixCenters asks for the right sign of the volume at every specified stereocentre. Seen from the first neighbour the others
