@@ -172,3 +172,9 @@ func (s *Store) eachJob(visit func(Job)) error {
 		})
 	})
 }
+
+// CountJobs returns the number of jobs in each state.
+func (s *Store) CountJobs() (map[State]int, error) {
+	counts := map[State]int{}
+	return counts, s.eachJob(func(job Job) { counts[job.State]++ })
+}

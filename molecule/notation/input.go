@@ -44,8 +44,21 @@ func (e *InputError) Unwrap() error { return e.Err }
 // ErrChoice says that an input does not hold exactly one notation.
 var ErrChoice = errors.New("give the molecule in exactly one of smiles, molfile, xyz and lj")
 
-// Read returns the molecule of the input. All errors are *InputError. A cluster has no molecule: Read must not be called for it.
+// Read returns the molecule of the input, which must be a single one: a salt or mixture is a *[FragmentsError]. All errors are wrapped
+// in *[InputError]. A cluster has no molecule: Read must not be called for it.
 func (in Input) Read() (*Reading, error) {
+	r, err := in.Parse()
+	if err != nil {
+		return nil, err
+	}
+	if err := single(r.Molecule); err != nil {
+		return nil, &InputError{"molecule", err}
+	}
+	return r, nil
+}
+
+// Parse is Read that allows several fragments.
+func (in Input) Parse() (*Reading, error) {
 	given := 0
 	for _, s := range []string{in.SMILES, in.Molfile, in.XYZ} {
 		if strings.TrimSpace(s) != "" {
@@ -61,9 +74,6 @@ func (in Input) Read() (*Reading, error) {
 	}
 	if in.Name != "" {
 		r.Name = in.Name
-	}
-	if err := single(r.Molecule); err != nil {
-		return nil, &InputError{part, err}
 	}
 	return r, nil
 }
@@ -106,13 +116,21 @@ func (e *FragmentsError) Error() string {
 		len(e.SMILES), strings.Join(e.SMILES, ", "))
 }
 
+// Fragments returns the SMILES of the unconnected parts of a molecule, or nil if there is only one.
+func Fragments(m *molecule.Molecule) []string {
+	if len(m.Fragments()) < 2 {
+		return nil
+	}
+	return strings.Split(smiles.Canonical(m), ".")
+}
+
 // single returns an error unless there is exactly one fragment.
 func single(m *molecule.Molecule) error {
-	switch n := len(m.Fragments()); {
-	case n == 0:
+	if len(m.Atoms) == 0 {
 		return errors.New("the input holds no atoms; give at least one")
-	case n > 1:
-		return &FragmentsError{strings.Split(smiles.Canonical(m), ".")}
+	}
+	if parts := Fragments(m); parts != nil {
+		return &FragmentsError{parts}
 	}
 	return nil
 }

@@ -1,0 +1,110 @@
+package api
+
+import (
+	"context"
+	"encoding/json"
+	"fmt"
+	"io"
+	"net/http"
+	"time"
+
+	"github.com/danielgtaylor/huma/v2"
+	"github.com/danielgtaylor/huma/v2/adapters/humachi"
+
+	"tarn/store"
+)
+
+// keepAlive is how often an idle stream sends a comment, so that proxies leave it open.
+const keepAlive = 20 * time.Second
+
+func eventStream(op huma.Operation) huma.Operation {
+	op.Responses = map[string]*huma.Response{"200": {
+		Description: "Events named job, each with a job resource as data",
+		Content:     map[string]*huma.MediaType{"text/event-stream": {Schema: &huma.Schema{Type: "string"}}},
+	}}
+	return op
+}
+
+// followJob streams one job, beginning with its present state, and ends after its final one.
+func (s *server) followJob(ctx context.Context, in *jobID) (*huma.StreamResponse, error) {
+	if _, err := s.Queue.Job(in.ID); err != nil {
+		return nil, s.problem(ctx, err)
+	}
+	return s.stream(func(send func(store.Job) error) (bool, error) {
+		job, err := s.Queue.Job(in.ID)
+		if err == nil {
+			err = send(job)
+		}
+		return job.State.Settled(), err
+	}, func(job store.Job) (wanted, last bool) { return job.ID == in.ID, job.State.Settled() }), nil
+}
+
+// followJobs streams all jobs from now on, beginning with those that have not ended.
+func (s *server) followJobs(context.Context, *struct{}) (*huma.StreamResponse, error) {
+	return s.stream(func(send func(store.Job) error) (bool, error) {
+		recent, err := s.Queue.Jobs("", 100)
+		for i := len(recent) - 1; i >= 0 && err == nil; i-- {
+			if !recent[i].State.Settled() {
+				err = send(recent[i])
+			}
+		}
+		return false, err
+	}, func(store.Job) (wanted, last bool) { return true, false }), nil
+}
+
+// stream sends what begin sends, then the changes that are wanted, until the last one or until the client has gone.
+func (s *server) stream(begin func(send func(store.Job) error) (done bool, err error), choose func(store.Job) (wanted, last bool)) *huma.StreamResponse {
+	return &huma.StreamResponse{Body: func(hc huma.Context) {
+		r, w := humachi.Unwrap(hc)
+		w.Header().Set("Content-Type", "text/event-stream")
+		w.Header().Set("Cache-Control", "no-store")
+		control := http.NewResponseController(w)
+		_ = control.SetWriteDeadline(time.Time{}) // a stream outlives the deadline of ordinary answers
+		listener := s.Queue.Listen()
+		defer listener.Close()
+		send := func(job store.Job) error {
+			if err := writeEvent(w, job); err != nil {
+				return err
+			}
+			return control.Flush()
+		}
+		if _, err := fmt.Fprint(w, "retry: 2000\n\n"); err != nil {
+			return
+		}
+		if done, err := begin(send); done || err != nil {
+			return
+		}
+		_ = control.Flush()
+		idle := time.NewTicker(keepAlive)
+		defer idle.Stop()
+		for {
+			select {
+			case <-r.Context().Done():
+				return
+			case <-idle.C:
+				if _, err := fmt.Fprint(w, ": alive\n\n"); err != nil || control.Flush() != nil {
+					return
+				}
+			case <-listener.Ready():
+				for _, job := range listener.Take() {
+					wanted, last := choose(job)
+					if !wanted {
+						continue
+					}
+					if err := send(job); err != nil || last {
+						return
+					}
+				}
+			}
+		}
+	}}
+}
+
+func writeEvent(w io.Writer, job store.Job) error {
+	data, err := json.Marshal(resource(job))
+	if err != nil {
+		return err
+	}
+	_, err = fmt.Fprintf(w, "event: job\ndata: %s\n\n", data)
+	return err
+}
