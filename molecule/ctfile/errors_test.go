@@ -271,3 +271,14 @@ func TestEmptyFiles(t *testing.T) {
 		require.ErrorIs(t, err, io.EOF, "%q", file)
 	}
 }
+
+func BenchmarkRead(b *testing.B) {
+	record := alanine2000 + "> <NUMBER>\n1\n\n$$$$\n"
+	r := ctfile.NewReader(&repeated{text: record, n: 1 << 40})
+	b.SetBytes(int64(len(record)))
+	for b.Loop() {
+		if _, err := r.Read(); err != nil {
+			b.Fatal(err)
+		}
+	}
+}

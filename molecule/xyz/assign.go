@@ -42,23 +42,24 @@ type step struct {
 
 // partial is the best way so far to a situation: how many extra bonds each open atom has already, and the charge.
 type partial struct {
-	used   []int8 // of the atoms of the front, in its order
+	used   string // one byte for each atom of the front, in its order
 	charge int
 	rare   int // atoms in a state that is not usual
 	cost   cost
 	last   *step
 }
 
-// maxRare is how many atoms of one part may be in states that are not usual, and maxPartials how many situations are followed.
+// maxRare is how many atoms of one part may be in states that are not usual, and maxPartials how many situations are
+// followed: enough for fullerenes and for flakes of graphene with a hundred rings.
 const (
 	maxRare     = 2
-	maxPartials = 100_000
+	maxPartials = 10_000
 )
 
 // solve returns the best assignment of one part (atoms joined by bonds that may be multiple) for each charge it can have,
 // by dynamic programming: atoms are taken in one after the other, and of all ways that leave the same open valences at the
-// front and the same charge only the best is kept. It returns nil if the part is too entangled.
-func (s *structure) solve(part []int, limit rank) map[int]*partial {
+// front and the same charge only the best is kept. It returns false if the part is too entangled, and no charge if nothing fits.
+func (s *structure) solve(part []int, limit rank) (map[int]*partial, bool) {
 	in := make(map[int]int, len(part)) // atom → number of its neighbours not taken in yet
 	for _, atom := range part {
 		in[atom] = 0
@@ -78,7 +79,7 @@ func (s *structure) solve(part []int, limit rank) map[int]*partial {
 		taken[atom] = true
 		front = append(front, atom)
 		for _, p := range now {
-			p.used = append(p.used, 0)
+			p.used += "\x00"
 		}
 		for _, n := range s.around[atom] {
 			if at := slices.Index(front, n.Atom); at >= 0 && s.mayBeMultiple(n.Bond) {
@@ -93,15 +94,15 @@ func (s *structure) solve(part []int, limit rank) map[int]*partial {
 				front = slices.Delete(front, k, k+1)
 			}
 		}
-		if len(now) == 0 || len(now) > maxPartials {
-			return nil
+		if len(now) > maxPartials {
+			return nil, false
 		}
 	}
 	best := make(map[int]*partial, len(now))
 	for _, p := range now {
 		best[p.charge] = p
 	}
-	return best
+	return best, true
 }
 
 // nextAtom chooses the atom that keeps the front short.
@@ -161,11 +162,11 @@ func (s *structure) bondOrders(now []*partial, bond, i, j, mostI, mostJ int) []*
 	next := newFollowed(len(now))
 	for _, p := range now {
 		for extra := 0; extra <= min(2, mostI-int(p.used[i]), mostJ-int(p.used[j])); extra++ {
-			q := &partial{used: slices.Clone(p.used), charge: p.charge, rare: p.rare}
-			q.used[i] += int8(extra)
-			q.used[j] += int8(extra)
-			q.cost = p.cost.plus(cost{0, s.misfit(bond, extra)})
-			next.add(q, func() { q.last = &step{before: p.last, atom: -1, bond: bond, extra: extra} })
+			used := append(next.used[:0], p.used...)
+			used[i] += byte(extra)
+			used[j] += byte(extra)
+			next.used = used
+			next.add(p, 0, p.rare, p.cost.plus(cost{0, s.misfit(bond, extra)}), step{atom: -1, bond: bond, extra: extra})
 		}
 	}
 	return next.list
@@ -179,14 +180,15 @@ func (s *structure) close(now []*partial, atom, at int, limit rank) []*partial {
 			if c.rank > limit || c.extra != int(p.used[at]) {
 				continue
 			}
-			q := &partial{used: slices.Delete(slices.Clone(p.used), at, at+1), charge: p.charge + c.charge, rare: p.rare}
+			rare := p.rare
 			if c.rank > usual {
-				if q.rare++; q.rare > maxRare {
-					continue
-				}
+				rare++
 			}
-			q.cost = p.cost.plus(cost{c.cost, s.strain(atom, c)})
-			next.add(q, func() { q.last = &step{before: p.last, atom: atom, state: c, bond: -1} })
+			if rare > maxRare {
+				continue
+			}
+			next.used = append(append(next.used[:0], p.used[:at]...), p.used[at+1:]...)
+			next.add(p, c.charge, rare, p.cost.plus(cost{c.cost, s.strain(atom, c)}), step{atom: atom, state: c, bond: -1})
 		}
 	}
 	return next.list
@@ -196,27 +198,28 @@ func (s *structure) close(now []*partial, atom, at int, limit rank) []*partial {
 type followed struct {
 	list []*partial
 	at   map[string]int
+	used []byte // of the situation to be added next
 	key  []byte
 }
 
 func newFollowed(size int) *followed { return &followed{at: make(map[string]int, size)} }
 
-func (f *followed) add(p *partial, keep func()) {
-	f.key = binary.AppendVarint(f.key[:0], int64(p.charge))
-	for _, u := range p.used {
-		f.key = append(f.key, byte(u))
-	}
-	at, ok := f.at[string(f.key)]
-	switch {
-	case !ok:
-		f.at[string(f.key)] = len(f.list)
-		f.list = append(f.list, p)
-	case p.cost.less(f.list[at].cost):
-		f.list[at] = p
-	default:
+// add follows p to f.used with a decision that changes the charge.
+func (f *followed) add(p *partial, charge, rare int, c cost, decision step) {
+	charge += p.charge
+	f.key = binary.AppendVarint(append(f.key[:0], f.used...), int64(charge))
+	at, known := f.at[string(f.key)]
+	if known && !c.less(f.list[at].cost) {
 		return
 	}
-	keep()
+	decision.before = p.last
+	q := &partial{used: string(f.used), charge: charge, rare: rare, cost: c, last: &decision}
+	if known {
+		f.list[at] = q
+		return
+	}
+	f.at[string(f.key)] = len(f.list)
+	f.list = append(f.list, q)
 }
 
 // misfit is how far a bond is from the usual length of its order, in tenths of an ångström. A multiple bond that leaves a

@@ -44,7 +44,11 @@ func perceive(elements []molecule.Element, isotopes map[int]int, g molecule.Geom
 	}
 	parts := s.parts()
 	for limit := usual; limit <= unusual; limit++ {
-		if best := s.assemble(parts, limit)[charge]; best != nil {
+		solutions, err := s.solveAll(parts, limit)
+		if err != nil {
+			return nil, nil, err
+		}
+		if best := assemble(solutions)[charge]; best != nil {
 			return s.finish(best, isotopes)
 		}
 	}
@@ -58,15 +62,26 @@ type whole struct {
 	last   *step
 }
 
-// assemble combines the parts to the best assignment for each total charge.
-func (s *structure) assemble(parts [][]int, limit rank) map[int]*whole {
+func (s *structure) solveAll(parts [][]int, limit rank) ([]map[int]*partial, error) {
+	solutions := make([]map[int]*partial, len(parts))
+	for i, part := range parts {
+		var ok bool
+		if solutions[i], ok = s.solve(part, limit); !ok {
+			return nil, &PerceptionError{Atoms: part, Reason: fmt.Sprintf("the %d conjugated atoms around atom %s are too entangled "+
+				"to find their bond orders; give the molecule as a molfile or SMILES", len(part), s.name(part[0]))}
+		}
+	}
+	return solutions, nil
+}
+
+// assemble combines the solutions of the parts to the best assignment for each total charge.
+func assemble(solutions []map[int]*partial) map[int]*whole {
 	total := map[int]*whole{0: {}}
-	for _, part := range parts {
-		solutions := s.solve(part, limit)
-		next := make(map[int]*whole, len(total)+len(solutions))
+	for _, part := range solutions {
+		next := make(map[int]*whole, len(total)+len(part))
 		for _, charge := range slices.Sorted(maps.Keys(total)) {
-			for _, own := range slices.Sorted(maps.Keys(solutions)) {
-				w := &whole{cost: total[charge].cost.plus(solutions[own].cost), before: total[charge], last: solutions[own].last}
+			for _, own := range slices.Sorted(maps.Keys(part)) {
+				w := &whole{cost: total[charge].cost.plus(part[own].cost), before: total[charge], last: part[own].last}
 				if old := next[charge+own]; old == nil || w.cost.less(old.cost) {
 					next[charge+own] = w
 				}
@@ -120,40 +135,34 @@ func (s *structure) name(atom int) string { return fmt.Sprintf("%d (%s)", atom+1
 
 // explain says which atoms keep the structure from having the total charge, and which charge it could have.
 func (s *structure) explain(parts [][]int, charge int) error {
-	e := &PerceptionError{}
-	for _, part := range parts {
-		if s.solve(part, open) == nil {
-			e.Atoms = part
-			e.Reason = fmt.Sprintf("no bond orders could be found for the %d atoms around atom %s; are all hydrogens there?", len(part), s.name(part[0]))
-			return e
-		}
+	everyday, err := s.solveAll(parts, usual)
+	if err != nil {
+		return err
 	}
-	remedy := "; give the right charge, and check that no hydrogen is missing"
-	lowest := 0
-	best := s.assemble(parts, usual)
-	for k, q := range slices.Sorted(maps.Keys(best)) {
-		// A charge must save more than the drawings of one ion cost to be suggested instead of none.
-		if price := best[q].cost.valence + 5*max(q, -q); k == 0 || price < lowest {
-			lowest = price
-			remedy = fmt.Sprintf("; all valences fit a total charge of %d, give it if it is meant", q)
-		}
+	opened, err := s.solveAll(parts, open)
+	if err != nil {
+		return err
 	}
-	var free []string
-	if w := s.assemble(parts, open)[charge]; w != nil {
+	e := &PerceptionError{Reason: fmt.Sprintf("no bond orders and formal charges give the total charge %d", charge)}
+	if w := assemble(opened)[charge]; w != nil {
 		_, chosen := s.read(w)
+		var free []string
 		for i, c := range chosen {
 			if c.rank == open {
 				e.Atoms = append(e.Atoms, i)
 				free = append(free, s.name(i))
 			}
 		}
-	}
-	switch {
-	case len(free) > 0:
 		e.Reason = fmt.Sprintf("the total charge %d leaves a free valence at atom %s", charge, strings.Join(free, ", "))
-	default:
-		e.Reason = fmt.Sprintf("no bond orders and formal charges give the total charge %d", charge)
 	}
-	e.Reason += remedy
+	best := assemble(everyday)
+	if len(best) == 0 {
+		e.Reason += "; give the right charge, and check that no hydrogen is missing"
+		return e
+	}
+	// A charge must save more than the drawings of one ion cost to be suggested instead of none.
+	price := func(q int) int { return best[q].cost.valence + 5*max(q, -q) }
+	fitting := slices.MinFunc(slices.Sorted(maps.Keys(best)), func(p, q int) int { return price(p) - price(q) })
+	e.Reason += fmt.Sprintf("; all valences fit a total charge of %d, give it if it is meant", fitting)
 	return e
 }

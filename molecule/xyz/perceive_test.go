@@ -175,3 +175,58 @@ func TestCrowdedAtomLosesItsLongestBond(t *testing.T) {
 	require.Equal(t, -1, f.Molecule.BondBetween(1, 2))
 	require.Equal(t, -1, f.Molecule.Atoms[2].Charge)
 }
+
+// Buckminsterfullerene, C60: the corners of a truncated icosahedron with edges of 1.42 Å; every carbon has one double bond.
+func TestFullerene(t *testing.T) {
+	golden := (1 + math.Sqrt(5)) / 2
+	var g molecule.Geometry
+	for _, corner := range [][3]float64{{0, 1, 3 * golden}, {1, 2 + golden, 2 * golden}, {golden, 2, 2*golden + 1}} {
+		for signs := range 8 {
+			at := corner
+			for k := range at {
+				if signs>>k&1 == 1 {
+					at[k] = -at[k]
+				}
+			}
+			if corner[0] == 0 && signs&1 == 1 {
+				continue
+			}
+			for k := range 3 { // the cyclic permutations; edges of length 2
+				g = append(g, 0.71*at[k], 0.71*at[(k+1)%3], 0.71*at[(k+2)%3])
+			}
+		}
+	}
+	carbon := make([]molecule.Element, 60)
+	for i := range carbon {
+		carbon[i] = 6
+	}
+	m, _, err := xyz.Perceive(carbon, g, 0)
+	require.NoError(t, err)
+	require.Len(t, m.Bonds, 90)
+	doubles := make([]int, 60)
+	for _, b := range m.Bonds {
+		doubles[b.A] += b.Order - 1
+		doubles[b.B] += b.Order - 1
+	}
+	for i, n := range doubles {
+		require.Equal(t, 1, n, "double bonds at carbon %d", i+1)
+	}
+}
+
+func BenchmarkPerceive(b *testing.B) {
+	text, err := os.ReadFile("testdata/molecules.xyz")
+	require.NoError(b, err)
+	at := strings.Index(string(text), "caffeine")
+	frame := string(text[strings.LastIndex(string(text[:at-1]), "\n")+1:])
+	f, err := xyz.NewReader(strings.NewReader(frame), xyz.Options{}).Read()
+	require.NoError(b, err)
+	elements := make([]molecule.Element, len(f.Molecule.Atoms))
+	for i, a := range f.Molecule.Atoms {
+		elements[i] = a.Element
+	}
+	for b.Loop() {
+		if _, _, err := xyz.Perceive(elements, f.Geometry, 0); err != nil {
+			b.Fatal(err)
+		}
+	}
+}
