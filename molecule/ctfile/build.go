@@ -64,6 +64,7 @@ func (t *table) buildFault(err error) error {
 		atom = build.Atom
 	case errors.As(err, &kekule) && len(kekule.Atoms) > 0:
 		atom = kekule.Atoms[0]
+		f.reason += "; in a molfile write such a hydrogen as an atom, or single and double bonds in place of type 4"
 	case errors.As(err, &stereo):
 		atom = stereo.Atom
 	}

@@ -350,3 +350,18 @@ func TestFlatBenzeneWithHeaderOf3D(t *testing.T) {
 	require.Equal(t, 3, doubles)
 	require.Equal(t, [3]float64{1.39, 0, 0}, r.Geometry.At(0))
 }
+
+// Pyrrole drawn with aromatic bonds: with the hydrogen of nitrogen as an atom it is unique, without it nothing fits.
+func TestAromaticNitrogen(t *testing.T) {
+	var s sketch
+	for i, symbol := range []string{"N", "C", "C", "C", "C"} {
+		angle := float64(i) * 2 * math.Pi / 5
+		s.symbols = append(s.symbols, symbol)
+		s.at = append(s.at, [2]float64{math.Cos(angle), math.Sin(angle)})
+		s.bonds = append(s.bonds, [4]int{i + 1, (i+1)%5 + 1, 4, 0})
+	}
+	_, err := ctfile.NewReader(strings.NewReader(s.file(ctfile.V2000))).Read()
+	require.ErrorContains(t, err, "write such a hydrogen as an atom")
+	s.symbols, s.at, s.bonds = append(s.symbols, "H"), append(s.at, [2]float64{2, 0}), append(s.bonds, [4]int{1, 6, 1, 0})
+	require.Equal(t, canonical(t, "c1cc[nH]c1"), smiles.Canonical(readOne(t, s.file(ctfile.V2000)).Molecule))
+}
