@@ -22,7 +22,7 @@ import (
 )
 
 type minimaQuery struct {
-	moleculeKey
+	Key          string  `path:"key" maxLength:"100"`
 	Field        string  `query:"field" enum:"mmff94,mmff94s,lj" doc:"Force field; default: the one in which there is a library"`
 	TemperatureK float64 `query:"temperature_k" default:"298.15" exclusiveMinimum:"0" maximum:"10000" doc:"Of the populations"`
 	Window       float64 `query:"window" minimum:"0" maximum:"1000" doc:"Energy range above the lowest minimum, kcal/mol; default: the widest that was searched"`
