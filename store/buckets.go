@@ -10,6 +10,7 @@ import (
 	"time"
 
 	bolt "go.etcd.io/bbolt"
+	bolterrors "go.etcd.io/bbolt/errors"
 )
 
 // schemaVersion is written into every new file; a file of another version is refused.
@@ -47,7 +48,7 @@ func Open(folder string) (*Store, error) {
 	}
 	path := filepath.Join(folder, "tarn.db")
 	db, err := bolt.Open(path, 0o640, &bolt.Options{Timeout: lockTimeout})
-	if errors.Is(err, bolt.ErrTimeout) {
+	if errors.Is(err, bolterrors.ErrTimeout) {
 		return nil, ErrLocked
 	}
 	if err != nil {

@@ -7,6 +7,7 @@ import (
 	"fmt"
 
 	bolt "go.etcd.io/bbolt"
+	bolterrors "go.etcd.io/bbolt/errors"
 
 	"tarn/search"
 )
@@ -64,7 +65,7 @@ func putCheckpoint(tx *bolt.Tx, jobID string, c search.Checkpoint) error {
 
 func dropCheckpoint(tx *bolt.Tx, jobID string) error {
 	err := tx.Bucket(checkpointsBucket).DeleteBucket([]byte(jobID))
-	if errors.Is(err, bolt.ErrBucketNotFound) {
+	if errors.Is(err, bolterrors.ErrBucketNotFound) {
 		return nil
 	}
 	return err

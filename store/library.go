@@ -22,10 +22,11 @@ type Entry struct {
 // and must be used by one goroutine at a time, with one open Library for a molecule and field. After an error of Record it must be
 // opened again.
 type Library struct {
-	store  *Store
-	bucket []byte
-	index  *dedupe.Index
-	order  []int // atom of the search that stands at each place of the library; nil: the same order
+	store     *Store
+	bucket    []byte
+	index     *dedupe.Index // an identifier is a place in the library
+	described []bool        // by place: the properties of the minimum are there
+	order     []int         // atom of the search that stands at each place of the geometry; nil: the same order
 }
 
 // ErrSettled says that a job has ended, so that nothing more can be recorded for it.
@@ -36,8 +37,8 @@ var ErrSettled = errors.New("the job has ended")
 func (s *Store) OpenLibrary(key, field string, symmetry *dedupe.Symmetry, order []int) (*Library, error) {
 	l := &Library{store: s, bucket: libraryName(key, field), index: dedupe.NewIndex(symmetry, dedupe.Tolerance{}), order: order}
 	err := s.eachEntry(l.bucket, func(n uint64, e Entry) error {
-		if id := l.index.Add(e.X, e.Energy); id != int(n) {
-			return fmt.Errorf("library %s: entry %d is missing", l.bucket, id)
+		if place := l.learn(e.Minimum); place != int(n) {
+			return fmt.Errorf("library %s: entry %d is missing", l.bucket, place)
 		}
 		return nil
 	})
@@ -45,6 +46,11 @@ func (s *Store) OpenLibrary(key, field string, symmetry *dedupe.Symmetry, order 
 		return nil, err
 	}
 	return l, nil
+}
+
+func (l *Library) learn(m search.Minimum) (place int) {
+	l.described = append(l.described, m.Degeneracy > 0)
+	return l.index.Add(m.X, m.Energy)
 }
 
 // Record writes a checkpoint of a job and merges its minima into the library, all in one transaction. A minimum that another search has
@@ -69,49 +75,66 @@ func (l *Library) Record(jobID string, c search.Checkpoint) error {
 		if err != nil {
 			return err
 		}
-		for i, m := range c.Minima {
-			if err := l.merge(entries, links, jobID, uint64(i), m); err != nil {
-				return fmt.Errorf("library %s, minimum %d of job %s: %w", l.bucket, i+1, jobID, err)
-			}
+		if err := l.merge(entries, links, jobID, c); err != nil {
+			return fmt.Errorf("library %s, job %s: %w", l.bucket, jobID, err)
 		}
 		return nil
 	})
 }
 
-func (l *Library) merge(entries, links *bolt.Bucket, jobID string, i uint64, m search.Minimum) error {
-	m.X = l.reordered(m.X)
-	var e Entry
-	place := links.Get(number(i))
-	if place == nil {
-		id, known := l.index.Find(m.X, m.Energy)
-		if !known {
-			id = l.index.Add(m.X, m.Energy)
-			m.Hits, m.Draws = 0, 0 // they are counted by job below
-			e = Entry{Minimum: m, HitsByJob: map[string]int{}}
-			if err := put(entries, number(uint64(id)), e); err != nil {
-				return err
-			}
+// merge brings the minima of a job to their places. Only those that the last round touched or that have been described since are looked
+// at; the others were merged with an earlier checkpoint.
+func (l *Library) merge(entries, links *bolt.Bucket, jobID string, c search.Checkpoint) error {
+	places := make([]int, len(c.Minima))
+	hits := map[int]int{} // two minima of a search may lie within the tolerance of one entry
+	for i := range c.Minima {
+		place, err := l.placeOf(entries, links, uint64(i), &c.Minima[i])
+		if err != nil {
+			return err
 		}
-		place = number(uint64(id))
-		if err := links.Put(number(i), place); err != nil {
+		places[i] = place
+		hits[place] += c.Minima[i].Hits
+	}
+	for i, place := range places {
+		m := &c.Minima[i]
+		describes := m.Degeneracy > 0 && !l.described[place]
+		if m.LastHitInRound < c.Round-1 && !describes {
+			continue
+		}
+		var e Entry
+		if err := get(entries, number(uint64(place)), &e); err != nil {
+			return err
+		}
+		if describes {
+			total := e.Hits
+			e.Minimum = *m
+			e.X, e.Hits, e.Draws = l.reordered(m.X), total, 0
+			l.described[place] = true
+		}
+		e.Hits += hits[place] - e.HitsByJob[jobID]
+		e.HitsByJob[jobID] = hits[place]
+		if err := put(entries, number(uint64(place)), e); err != nil {
 			return err
 		}
 	}
-	if err := get(entries, place, &e); err != nil {
-		return err
+	return nil
+}
+
+// placeOf returns the place of a job's minimum in the library; an unknown one gets the next place, without hits.
+func (l *Library) placeOf(entries, links *bolt.Bucket, i uint64, m *search.Minimum) (int, error) {
+	if link := links.Get(number(i)); link != nil {
+		return int(binary.BigEndian.Uint64(link)), nil
 	}
-	described := e.Degeneracy == 0 && m.Degeneracy > 0
-	if e.HitsByJob[jobID] == m.Hits && !described {
-		return nil
+	fresh := *m
+	fresh.X, fresh.Hits, fresh.Draws = l.reordered(m.X), 0, 0
+	place, known := l.index.Find(fresh.X, fresh.Energy)
+	if !known {
+		place = l.learn(fresh)
+		if err := put(entries, number(uint64(place)), Entry{Minimum: fresh, HitsByJob: map[string]int{}}); err != nil {
+			return 0, err
+		}
 	}
-	if described {
-		hits := e.Hits
-		e.Minimum = m
-		e.Hits, e.Draws = hits, 0
-	}
-	e.Hits += m.Hits - e.HitsByJob[jobID]
-	e.HitsByJob[jobID] = m.Hits
-	return put(entries, place, e)
+	return place, links.Put(number(i), number(uint64(place)))
 }
 
 func (l *Library) reordered(x []float64) []float64 {
