@@ -17,8 +17,8 @@ const (
 	maxFusedCage   = 5
 )
 
-// cageBonds finds the pairs of bridgeheads that are joined by three separate bridges of few atoms.
-func (m *Molecule) cageBonds() []cageBond {
+// findCageBonds finds the pairs of bridgeheads that are joined by three separate bridges of few atoms.
+func (m *Molecule) findCageBonds() []cageBond {
 	inRing := ringBonds(m.neighbors, len(m.Bonds))
 	ring := make([][]int, len(m.Atoms))
 	for i, around := range m.neighbors {
@@ -153,7 +153,7 @@ func (m *Molecule) coupleCages(candidates []candidate) (opposite []bool) {
 			at[c.center.Atom] = i
 		}
 	}
-	for _, cage := range m.cageBonds() {
+	for _, cage := range m.cages() {
 		a, okA := at[cage.heads[0]]
 		b, okB := at[cage.heads[1]]
 		if !okA || !okB || candidates[a].unit == candidates[b].unit {

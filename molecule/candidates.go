@@ -245,7 +245,7 @@ func (m *Molecule) lockedNitrogens() []bool {
 			locked[i] = locked[i] || len(ring) == 3 && m.Atoms[i].Element == 7
 		}
 	}
-	for _, cage := range m.cageBonds() {
+	for _, cage := range m.cages() {
 		if cage.bridged {
 			for _, i := range cage.heads {
 				locked[i] = locked[i] || m.Atoms[i].Element == 7

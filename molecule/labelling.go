@@ -9,15 +9,15 @@ type labelling struct {
 	orbits      *unionFind
 }
 
-// searchBudget bounds the work of one search, in vertices visited. No molecule that anyone draws comes near it; beyond it
-// the best order found so far is taken, which may then depend on the numbering of the input.
-const searchBudget = 30_000_000
+// searchBudget bounds the work of one search, in nodes times vertices. No molecule that anyone draws comes near it; beyond
+// it the best order found so far is taken, which may then depend on the numbering of the input.
+const searchBudget = 5_000_000
 
 // label finds the canonical order by individualisation and refinement: where refinement leaves ties, each vertex of a
 // tied cell is tried and the order with the smallest certificate wins. Branches that automorphisms found on the way show
 // to be equivalent are skipped. Source: McKay, Congr. Numer. 30, 45 (1981).
 func (g *colorGraph) label() *labelling {
-	s := &labelSearch{graph: g, refiner: newRefiner(g), orbits: newUnionFind(len(g.colors))}
+	s := &labelSearch{graph: g, refiner: newRefiner(g), orbits: newUnionFind(len(g.colors)), onPath: make([]bool, len(g.colors))}
 	s.findTwins()
 	root := s.refiner.start()
 	s.explore(root, 0, 0, true)
@@ -31,10 +31,14 @@ type labelSearch struct {
 	traces     []uint64 // trace at each level of the present path
 	first      *leaf
 	best       *leaf
-	generators [][]int // automorphisms found, as maps from vertex to vertex
+	generators []generator // automorphisms found
+	onPath     []bool
 	orbits     *unionFind
 	work       int
 }
+
+// generator is an automorphism: the vertices that it moves with their images.
+type generator [][2]int
 
 // leaf is a complete order with the way that led to it.
 type leaf struct {
@@ -65,16 +69,20 @@ func (s *labelSearch) explore(p *partition, level, relation int, likeFirst bool)
 	}
 	members := slices.Clone(p.order[cell : cell+p.size[cell]])
 	slices.Sort(members)
+	local := s.stabilizer(members)
 	var tried []int
 	for _, v := range members {
-		if len(tried) > 0 && (s.work > searchBudget || s.redundant(v, tried, level)) {
+		if len(tried) > 0 && (s.work > searchBudget || local.redundant(v, tried)) {
 			continue
 		}
 		s.work += len(p.order)
 		child := p.clone()
 		s.refiner.individualize(child, v)
 		s.path = append(s.path[:level], v)
-		if back := s.explore(child, level+1, relation, likeFirst); back < level {
+		s.onPath[v] = true
+		back := s.explore(child, level+1, relation, likeFirst)
+		s.onPath[v] = false
+		if back < level {
 			return back
 		}
 		relation = max(relation, 0) // a better branch has just put the best leaf below this node
@@ -107,30 +115,35 @@ func targetCell(p *partition) int {
 	return cell
 }
 
-// redundant tells whether an automorphism that leaves the path untouched carries v onto a vertex already tried.
-func (s *labelSearch) redundant(v int, tried []int, level int) bool {
-	if twin := s.graph.twins[v]; twin != 0 {
-		for _, t := range tried {
-			if s.graph.twins[t] == twin {
-				return true
-			}
+// stabilizer collects the orbits of the automorphisms found so far that leave the path to a node untouched.
+type stabilizer struct {
+	search *labelSearch
+	orbits *unionFind
+	taken  int // generators already looked at
+}
+
+func (s *labelSearch) stabilizer(members []int) *stabilizer {
+	local := &stabilizer{search: s, orbits: newUnionFind(len(s.graph.colors))}
+	for _, v := range members {
+		if twin := s.graph.twins[v]; twin != 0 {
+			local.orbits.union(v, twin-1)
 		}
 	}
-	orbits := newUnionFind(len(s.graph.colors))
-	for _, g := range s.generators {
-		if slices.ContainsFunc(s.path[:level], func(i int) bool { return g[i] != i }) {
+	return local
+}
+
+// redundant tells whether such an automorphism carries v onto a vertex already tried.
+func (l *stabilizer) redundant(v int, tried []int) bool {
+	for ; l.taken < len(l.search.generators); l.taken++ {
+		g := l.search.generators[l.taken]
+		if slices.ContainsFunc(g, func(move [2]int) bool { return l.search.onPath[move[0]] }) {
 			continue
 		}
-		for i, image := range g {
-			orbits.union(i, image)
+		for _, move := range g {
+			l.orbits.union(move[0], move[1])
 		}
 	}
-	for i, twin := range s.graph.twins {
-		if twin != 0 {
-			orbits.union(i, twin-1)
-		}
-	}
-	return slices.ContainsFunc(tried, func(t int) bool { return orbits.find(t) == orbits.find(v) })
+	return slices.ContainsFunc(tried, func(t int) bool { return l.orbits.find(t) == l.orbits.find(v) })
 }
 
 // reach handles a discrete partition.
@@ -157,10 +170,12 @@ func (s *labelSearch) reach(p *partition, level, relation int) int {
 
 // record notes the automorphism that carries one order onto another.
 func (s *labelSearch) record(from, to []int) {
-	g := make([]int, len(from))
+	var g generator
 	for i := range from {
-		g[from[i]] = to[i]
-		s.orbits.union(from[i], to[i])
+		if from[i] != to[i] {
+			g = append(g, [2]int{from[i], to[i]})
+			s.orbits.union(from[i], to[i])
+		}
 	}
 	s.generators = append(s.generators, g)
 }

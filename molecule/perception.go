@@ -12,6 +12,7 @@ type perception struct {
 	classes     func() []int
 	stereo      func() *stereoPerception
 	canonical   func() *canonicalOrder
+	cages       func() []cageBond
 }
 
 func perceptionOf(m *Molecule) perception {
@@ -23,5 +24,6 @@ func perceptionOf(m *Molecule) perception {
 		classes:     sync.OnceValue(m.findSymmetryClasses),
 		stereo:      sync.OnceValue(m.perceiveStereo),
 		canonical:   sync.OnceValue(m.findCanonicalOrder),
+		cages:       sync.OnceValue(m.findCageBonds),
 	}
 }

@@ -66,7 +66,8 @@ func (m *Molecule) withStereo(centers []Center, doubleBonds []DoubleBond) *Molec
 	changed.perception = perceptionOf(changed)
 	if m.standard() == m { // none of this depends on descriptors
 		changed.standard = func() *Molecule { return changed }
-		changed.rings, changed.aromaticity, changed.skeleton, changed.classes = m.rings, m.aromaticity, m.skeleton, m.classes
+		changed.rings, changed.aromaticity, changed.cages = m.rings, m.aromaticity, m.cages
+		changed.skeleton, changed.classes = m.skeleton, m.classes
 	}
 	return changed
 }
