@@ -1,6 +1,9 @@
 package molecule
 
-import "fmt"
+import (
+	"fmt"
+	"slices"
+)
 
 // resolveStereo puts the real hydrogens, or lone pairs, where descriptors name ImplicitHydrogen, and checks that each
 // descriptor fits its atom. hydrogenOf names the one hydrogen appended to an atom, noHydrogen or severalHydrogens.
@@ -67,8 +70,31 @@ func (d *Draft) resolveStereo(m *Molecule, hydrogenOf []int) error {
 		if !ok || b.RefA == nextA || b.RefB == nextB || !m.attached(b.A, b.RefA) || !m.attached(b.B, b.RefB) {
 			return fault(b.A, "the cis or trans mark does not belong to a double bond with substituents at both ends")
 		}
+		if size := m.transInSmallRing(*b); size > 0 {
+			return fault(b.A, "a trans double bond does not fit in a ring of %d atoms", size)
+		}
 	}
 	return nil
+}
+
+// transInSmallRing returns the size of a ring of fewer than eight atoms in which a double bond is marked trans, or 0.
+func (m *Molecule) transInSmallRing(b DoubleBond) int {
+	for _, ring := range m.Rings() {
+		at := slices.Index(ring, b.A)
+		if at < 0 || len(ring) >= minStereoRing {
+			continue
+		}
+		n := len(ring)
+		before, after := ring[(at+n-1)%n], ring[(at+1)%n]
+		beyond := ring[(at+2)%n]
+		if before == b.B {
+			before, after, beyond = after, before, ring[(at+n-2)%n]
+		}
+		if after == b.B && b.Cis == ((b.RefA == before) != (b.RefB == beyond)) {
+			return n
+		}
+	}
+	return 0
 }
 
 const (

@@ -195,6 +195,8 @@ func TestErrorsNameColumnAndReason(t *testing.T) {
 		{"C[C@@H2]F", 2, "2 hydrogens"},
 		{`F/C(\F)=C/F`, 3, "same side"},
 		{"C/C=C=C/C", 4, "even number"},
+		{"C1CCC/C=C/1", 7, "ring of 6"},
+		{"C1CC/C(F)=C(F)/1", 6, "ring of 5"},
 		{"CC(C)(C)(C)C", 2, "neutral carbon"},
 		{"CN(C)(C)C", 2, "[N+]"},
 		{"CO(C)C", 2, "+1 would allow"},
