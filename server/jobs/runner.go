@@ -119,6 +119,8 @@ func (r *Runner) Cancel(id string) (store.Job, error) { return r.interrupt(id, e
 
 // Resume puts a paused job back into the queue.
 func (r *Runner) Resume(id string) (store.Job, error) {
+	r.mu.Lock()
+	defer r.mu.Unlock()
 	job, err := r.store.UpdateJob(id, func(j *store.Job) error {
 		if j.State != store.Paused {
 			return &StateError{id, j.State, "resumed"}
@@ -128,6 +130,9 @@ func (r *Runner) Resume(id string) (store.Job, error) {
 	})
 	if err != nil {
 		return job, err
+	}
+	if id == r.current { // its last sitting is still ending
+		r.live = job
 	}
 	r.events.publish(job)
 	r.nudge()
