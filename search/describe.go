@@ -5,7 +5,6 @@ import (
 
 	"golang.org/x/sync/errgroup"
 
-	"tarn/dedupe"
 	"tarn/ensemble"
 	"tarn/minimize"
 )
@@ -32,7 +31,7 @@ func (p *Problem) describe(ctx context.Context, minima []*Minimum, workers int) 
 }
 
 func (p *Problem) describeOne(m *Minimum) error {
-	v, err := p.Symmetry.Versions(m.X, dedupe.Tolerance{})
+	v, err := p.Symmetry.Versions(m.X, p.tolerance())
 	if err != nil {
 		return err
 	}

@@ -70,7 +70,7 @@ func (w *walker) dynamicsWalk(ctx context.Context, start []float64) error {
 			w.noteStage(temperature*integrate.Boltzmann, 0, sum/float64(count))
 			return err
 		}
-		if o.fate == inverted || o.fate == broken || math.IsNaN(s.Energy) || p.evaporated(s.X) {
+		if o.fate == inverted || o.fate == broken || math.IsNaN(s.Energy) {
 			s = integrate.NewSystem(p.Field, start, masses, temperature, w.rng)
 			run(equilibrationPieces)
 			copy(reference, s.X)
@@ -88,21 +88,4 @@ func (p *Problem) correlation(a, b molecule.Geometry) float64 {
 		sum += math.Cos(a.Torsion(t[0], t[1], t[2], t[3]) - b.Torsion(t[0], t[1], t[2], t[3]))
 	}
 	return sum / float64(len(p.watched))
-}
-
-// evaporated tells whether an atom of a cluster is far from the others.
-func (p *Problem) evaporated(x molecule.Geometry) bool {
-	if !p.Cluster() {
-		return false
-	}
-	for i := range p.Atoms() {
-		alone := true
-		for j := range p.Atoms() {
-			alone = alone && (i == j || x.Distance(i, j) > 2.5)
-		}
-		if alone {
-			return true
-		}
-	}
-	return false
 }

@@ -8,8 +8,11 @@ import (
 	"tarn/search/schedule"
 )
 
-func minimaLimits(p *Problem) limits {
-	if p.Cluster() {
+func (w *walker) minimaLimits() limits {
+	switch {
+	case w.problem.Cluster() && w.wide:
+		return limits{1, 4}
+	case w.problem.Cluster():
 		return limits{0.4, 1.0} // Wales & Doye 1997 found 0.8 to serve all clusters
 	}
 	return limits{400 * integrate.Boltzmann, 1500 * integrate.Boltzmann}
@@ -20,10 +23,9 @@ func minimaLimits(p *Problem) limits {
 // 5111 (1997). The temperature starts from the uphill moves of a first stage that accepts everything, is cooled by the same schedule as
 // other annealing, and reheated when cold.
 func (w *walker) minimaWalk(ctx context.Context, start []float64, energy float64) error {
-	p := w.problem
 	here := append([]float64(nil), start...)
 	trial := make([]float64, len(here))
-	span := minimaLimits(p)
+	span := w.minimaLimits()
 	factor, slowness := schedule.Reheat(w.reheat)
 	hottest, kT := span.hottest, math.Inf(1)
 	const length = 6 // quenches a stage

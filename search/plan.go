@@ -13,10 +13,11 @@ const (
 	overMinima walkKind = iota // Monte Carlo over minima, annealed
 	thermal                    // Metropolis on the potential energy surface, annealed
 	trajectory                 // Langevin dynamics
+	scatter                    // quenches of random clusters, each for itself
 )
 
 func (k walkKind) String() string {
-	return [...]string{"over minima", "thermal", "trajectory"}[k]
+	return [...]string{"over minima", "thermal", "trajectory", "scatter"}[k]
 }
 
 // walksInRound is the number of walks of a round, whatever the number of workers: two for each way to choose a start.
@@ -39,7 +40,15 @@ type plan struct {
 	kind   walkKind
 	start  int // index of a minimum, -1 for a geometry built anew
 	quota  int
+	wide   bool // roam rather than go down
 }
+
+// For clusters up to scatterAtoms, of which all minima are wanted, the last walks of a round scatter: minima with small basins high up are
+// found by random quenches sooner than by any walk.
+const (
+	scatterAtoms = 13
+	scatterFrom  = 4
+)
 
 // quotaOf is the number of quenches of a walk: long enough to get away from its start, short enough that a round ends soon.
 func (p *Problem) quotaOf() int {
@@ -72,15 +81,20 @@ func (r *run) plan() []plan {
 			break
 		}
 		pl := plan{number: number, kind: available[number%len(available)], start: -1, quota: quota}
-		if len(inWindow) > 1 {
+		if r.problem.Cluster() && pl.kind == thermal && number%4 != 3 {
+			pl.kind = overMinima // which finds far more minima of clusters
+		}
+		if r.problem.Cluster() && r.problem.Atoms() <= scatterAtoms && number >= scatterFrom {
+			pl.kind = scatter
+		} else if len(inWindow) > 1 {
 			switch (number / 2) % 4 {
 			case 0:
 				pl.start = inWindow[lowRank(len(inWindow), rng)]
 			case 1:
-				pl.start = r.leastDrawn(inWindow, number%2, rng)
+				pl.start, pl.wide = r.leastDrawn(inWindow, number%2, rng), true
 			case 2:
 				if len(inWindow) > fewMinima {
-					pl.start = inWindow[rng.IntN(len(inWindow))]
+					pl.start, pl.wide = inWindow[rng.IntN(len(inWindow))], true
 				}
 			}
 		}

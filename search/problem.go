@@ -41,6 +41,23 @@ func (p *Problem) Atoms() int { return p.Field.Atoms() }
 // Cluster tells whether it is a Lennard-Jones cluster, in reduced units.
 func (p *Problem) Cluster() bool { return p.Molecule == nil }
 
+// tolerance says how far two quenches of one minimum may differ. Clusters have minima whose energies agree to 1e-4, and are so stiff that
+// quenches agree far better.
+func (p *Problem) tolerance() dedupe.Tolerance {
+	if p.Cluster() {
+		return dedupe.Tolerance{Energy: 1e-6, Distance: 0.02}
+	}
+	return dedupe.Tolerance{}
+}
+
+// roughTolerance says how close to a known minimum a geometry at the end of the crude stage must be to be on its way there.
+func (p *Problem) roughTolerance() dedupe.Tolerance {
+	if p.Cluster() {
+		return dedupe.Tolerance{Energy: 2e-5, Distance: 0.02}
+	}
+	return dedupe.Tolerance{Energy: 0.02, Distance: 0.1}
+}
+
 // ErrFragments says that an input holds more than one molecule.
 var ErrFragments = errors.New("the input has several unconnected parts")
 

@@ -7,6 +7,7 @@ import (
 
 	"golang.org/x/sync/errgroup"
 
+	"tarn/dedupe"
 	"tarn/minimize"
 	"tarn/molecule/embed"
 	"tarn/search/moves"
@@ -49,10 +50,18 @@ func (r *run) walk(ctx context.Context, pl plan, ceiling float64) (trail, error)
 		ceiling:  ceiling,
 		library:  r.checkpoint.Minima,
 		rough:    r.rough,
-		own:      newRoughIndex(r.problem),
+		own:      dedupe.NewIndex(r.problem.Symmetry, r.problem.roughTolerance()),
 		reheat:   r.checkpoint.Fruitless,
+		wide:     pl.wide,
 		notice:   r.notice,
 		trail:    trail{kind: pl.kind, start: pl.start},
+	}
+	if pl.kind == scatter {
+		err := w.scatterWalk(ctx)
+		if errors.Is(err, errSpent) {
+			err = nil
+		}
+		return w.trail, err
 	}
 	x, energy, err := w.begin(ctx, r, pl)
 	if err == nil {
@@ -69,6 +78,15 @@ func (r *run) walk(ctx context.Context, pl plan, ceiling float64) (trail, error)
 		err = nil
 	}
 	return w.trail, err
+}
+
+// scatterWalk quenches one random cluster after the other.
+func (w *walker) scatterWalk(ctx context.Context) error {
+	for {
+		if _, err := w.quench(ctx, moves.RandomCluster(w.problem.Atoms(), w.rng), 0); err != nil {
+			return err
+		}
+	}
 }
 
 // begin returns the geometry that a walk starts from: a known minimum, the start of the problem, or one built anew and quenched. Building

@@ -61,8 +61,8 @@ func Run(ctx context.Context, p *Problem, s Settings, from *Checkpoint, h Hooks)
 	}
 	r := &run{
 		problem: p, settings: s.WithDefaults(p.Cluster()), hooks: h,
-		index: dedupe.NewIndex(p.Symmetry, dedupe.Tolerance{}),
-		rough: newRoughIndex(p),
+		index: dedupe.NewIndex(p.Symmetry, p.tolerance()),
+		rough: dedupe.NewIndex(p.Symmetry, p.roughTolerance()),
 		began: time.Now(),
 	}
 	if from != nil {
@@ -79,10 +79,6 @@ func Run(ctx context.Context, p *Problem, s Settings, from *Checkpoint, h Hooks)
 			return nil, err
 		}
 	}
-}
-
-func newRoughIndex(p *Problem) *dedupe.Index {
-	return dedupe.NewIndex(p.Symmetry, dedupe.Tolerance{Energy: knownEnergy, Distance: knownDistance})
 }
 
 func (r *run) goOnFrom(c *Checkpoint) error {

@@ -24,7 +24,7 @@ type Settings struct {
 	Method      Method  `json:"method,omitempty"`          // default anneal
 	Seed        uint64  `json:"seed"`                      // of all random streams
 	WindowKcal  float64 `json:"window_kcal_mol,omitempty"` // energies above the lowest minimum that matter; default 6, for clusters everything
-	Coverage    float64 `json:"coverage,omitempty"`        // at which the search stops, 0 to 1; default 0.99
+	Coverage    float64 `json:"coverage,omitempty"`        // at which the search stops, 0 to 1; default 0.99, for clusters 0.9999
 	MaxQuenches int     `json:"max_quenches,omitempty"`    // budget; default 200,000
 	MaxSeconds  float64 `json:"max_seconds,omitempty"`     // budget of wall time over all sittings; default none
 	// TemperatureK is the temperature of populations; default 298.15. It does not steer the search.
@@ -37,6 +37,7 @@ const (
 	defaultWindow      = 6.0
 	clusterWindow      = 1000.0 // units of the well depth: everything
 	defaultCoverage    = 0.99
+	clusterCoverage    = 0.9999 // many minima of clusters have very small basins
 	defaultMaxQuenches = 200_000
 	defaultTemperature = 298.15
 	maxTemperature     = 10_000
@@ -58,6 +59,9 @@ func (s Settings) WithDefaults(cluster bool) Settings {
 	}
 	if s.Coverage == 0 {
 		s.Coverage = defaultCoverage
+		if cluster {
+			s.Coverage = clusterCoverage
+		}
 	}
 	if s.MaxQuenches == 0 {
 		s.MaxQuenches = defaultMaxQuenches

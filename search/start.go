@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"math/rand/v2"
+	"slices"
 
 	"tarn/minimize"
 	"tarn/molecule"
@@ -80,17 +81,20 @@ func (p *Problem) firstGeometry(ctx context.Context, given molecule.Geometry, se
 	return nil, fmt.Errorf("no first geometry kept its stereochemistry and bonds in the force field (%d tries; the last: %w)", firstTries, reason)
 }
 
-// brokenError says that two bonded atoms are no longer at the distance of a bond.
+// brokenError says that two bonded atoms are no longer at the distance of a bond, or that an atom has left its cluster.
 type brokenError struct{ a, b int }
 
 func (e *brokenError) Error() string {
+	if e.a == e.b {
+		return fmt.Sprintf("atom %d has left the cluster", e.a+1)
+	}
 	return fmt.Sprintf("the bond between atoms %d and %d is gone", e.a+1, e.b+1)
 }
 
 // check returns a *molecule.StereoError or a *brokenError if a quenched geometry is not the molecule any more.
 func (p *Problem) check(x molecule.Geometry) error {
 	if p.Cluster() {
-		return nil
+		return connected(x)
 	}
 	const shortest, longest = 0.75, 1.35 // of the reference length; bonds in minima are within 10 %
 	for i, b := range p.Molecule.Bonds {
@@ -99,6 +103,32 @@ func (p *Problem) check(x molecule.Geometry) error {
 		}
 	}
 	return p.Molecule.CheckStereo(x)
+}
+
+// connected returns a *brokenError if the atoms of a cluster are not all within reach of each other over neighbours. In minima neighbours
+// are within 1.2 σ; quenches that stop on the flat far side of the potential have parts that are farther away.
+func connected(x molecule.Geometry) error {
+	const reach = 1.6 // σ
+	n := x.Atoms()
+	seen := make([]bool, n)
+	seen[0] = true
+	stack, count := []int{0}, 1
+	for len(stack) > 0 {
+		i := stack[len(stack)-1]
+		stack = stack[:len(stack)-1]
+		for j := range n {
+			if !seen[j] && x.Distance(i, j) < reach {
+				seen[j] = true
+				count++
+				stack = append(stack, j)
+			}
+		}
+	}
+	if count == n {
+		return nil
+	}
+	alone := slices.Index(seen, false)
+	return &brokenError{alone, alone}
 }
 
 // watchedTorsions are those of the rotatable bonds and of the flexible rings.

@@ -13,6 +13,8 @@ const (
 	leastRounds = 4
 	// recent is the share of the rounds, the last ones, in which hardly anything new may have been found; it is two rounds at least.
 	recent = 0.25
+	// clusterRecent is the same for clusters, some of whose minima are hit once in a hundred thousand quenches.
+	clusterRecent = 0.5
 )
 
 // counts sums up the draws of the minima in the window.
@@ -53,7 +55,11 @@ func (r *run) complete(c coverage.Counts) bool {
 // foundLately counts the minima in the window that the last rounds found.
 func (r *run) foundLately() int {
 	top := r.lowest() + r.settings.WindowKcal
-	since := r.checkpoint.Round - max(2, int(recent*float64(r.checkpoint.Round)))
+	share := recent
+	if r.problem.Cluster() {
+		share = clusterRecent
+	}
+	since := r.checkpoint.Round - max(2, int(share*float64(r.checkpoint.Round)))
 	count := 0
 	for i := range r.checkpoint.Minima {
 		if m := &r.checkpoint.Minima[i]; m.Energy <= top && m.FoundInRound >= since {

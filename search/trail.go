@@ -53,7 +53,8 @@ type walker struct {
 	rough    *dedupe.Index // of the library, with wide tolerances; only read while walks run
 	own      *dedupe.Index // of what the walk itself has found, with wide tolerances
 	ownAt    []int         // the outcomes that own holds
-	reheat   int     // fruitless rounds so far
+	reheat   int           // fruitless rounds so far
+	wide     bool          // the walk is to roam rather than to go down
 	notice   func(temperatureK, energy float64, evaluations int) bool
 	trail    trail
 }
@@ -62,9 +63,6 @@ const (
 	// crudeRMS is the gradient at which the first stage of a quench ends, kcal/mol/Å; from there the energy falls by less than crudeMargin.
 	crudeRMS    = 0.01
 	crudeMargin = 1.0 // kcal/mol
-	// A crude geometry this close to a known minimum is on its way there.
-	knownEnergy   = 0.02 // kcal/mol
-	knownDistance = 0.1  // Å
 	// proofShare of those that look known are finished all the same, so that a minimum hidden beside a known one is found.
 	proofShare = 0.1
 )
