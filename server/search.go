@@ -2,6 +2,7 @@ package server
 
 import (
 	"context"
+	"encoding/json"
 	"errors"
 	"fmt"
 	"io"
@@ -16,6 +17,8 @@ import (
 	"golang.org/x/term"
 
 	"tarn/ensemble/report"
+	"tarn/molecule"
+	"tarn/molecule/smiles"
 	"tarn/search"
 	"tarn/server/jobs"
 )
@@ -28,6 +31,7 @@ type searchOptions struct {
 	json     bool
 	record   int
 	charge   int
+	all      bool
 }
 
 func searchCommand() *cobra.Command {
@@ -56,6 +60,7 @@ The ranked table (or JSON) goes to standard output, progress to standard error i
 	f.BoolVar(&o.json, "json", false, "print JSON instead of the table")
 	f.IntVar(&o.record, "record", 0, "record of a file that holds several, from 1")
 	f.IntVar(&o.charge, "charge", 0, "total charge of an XYZ input")
+	f.BoolVar(&o.all, "all-stereoisomers", false, "where the stereochemistry is open, search every stereoisomer in turn; JSON is then an array")
 	return cmd
 }
 
@@ -63,11 +68,58 @@ func runSearch(cmd *cobra.Command, argument string, o *searchOptions) error {
 	if err := o.check(cmd); err != nil {
 		return err
 	}
-	ctx := cmd.Context()
 	problem, name, err := o.problem(cmd, argument)
+	var open *search.UnspecifiedError
+	if o.all && errors.As(err, &open) {
+		return o.searchAll(cmd, open.Isomers)
+	}
 	if err != nil {
 		return err
 	}
+	document, failure := o.search(cmd, problem, name)
+	if failure != nil && document == nil {
+		return failure
+	}
+	return errors.Join(o.print(cmd.OutOrStdout(), *document, problem), failure)
+}
+
+// searchAll searches stereoisomers one after the other.
+func (o *searchOptions) searchAll(cmd *cobra.Command, isomers []*molecule.Molecule) error {
+	documents := make([]report.Document, 0, len(isomers))
+	for i, m := range isomers {
+		problem, err := search.NewMoleculeProblem(cmd.Context(), m, o.field, nil, o.settings.Seed)
+		if err != nil {
+			return fmt.Errorf("stereoisomer %s: %w", smiles.Canonical(m), err)
+		}
+		document, failure := o.search(cmd, problem, m.Name)
+		if failure != nil && document == nil {
+			return failure
+		}
+		one := *o
+		if o.output != "" {
+			extension := filepath.Ext(o.output)
+			one.output = fmt.Sprintf("%s-%d%s", strings.TrimSuffix(o.output, extension), i+1, extension)
+		}
+		out := cmd.OutOrStdout()
+		if o.json { // printed together below
+			documents, out = append(documents, *document), io.Discard
+		}
+		if err := errors.Join(one.print(out, *document, problem), failure); err != nil {
+			return err
+		}
+	}
+	if !o.json {
+		return nil
+	}
+	encoder := json.NewEncoder(cmd.OutOrStdout())
+	encoder.SetIndent("", "  ")
+	encoder.SetEscapeHTML(false)
+	return encoder.Encode(documents)
+}
+
+// search runs one search. If it is interrupted it returns what the finished rounds have found together with the error.
+func (o *searchOptions) search(cmd *cobra.Command, problem *search.Problem, name string) (*report.Document, error) {
+	ctx := cmd.Context()
 	var last search.Checkpoint
 	var progress search.Progress
 	show, finish := progressOn(cmd.ErrOrStderr())
@@ -87,16 +139,13 @@ func runSearch(cmd *cobra.Command, argument string, o *searchOptions) error {
 	if interrupted {
 		result = resultSoFar(last, progress, o.settings.WithDefaults(problem.Cluster()))
 	} else if err != nil {
-		return err
+		return nil, err
 	}
 	document := documentOf(jobs.Identity(name, problem), problem, result)
-	if err := o.print(cmd.OutOrStdout(), document, problem); err != nil {
-		return err
-	}
 	if interrupted {
-		return &partialError{"interrupted; the minima of the finished rounds are above"}
+		return &document, &partialError{"interrupted; the minima of the finished rounds are above"}
 	}
-	return nil
+	return &document, nil
 }
 
 // check refuses options that cannot be used, among them budgets of zero that were asked for in so many words.
