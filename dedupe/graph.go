@@ -94,9 +94,12 @@ func bondKinds(m *molecule.Molecule) (kinds []int, free []bool) {
 	_, aromatic := m.Aromaticity()
 	for i, b := range m.Bonds {
 		kinds[i] = b.Order
-		if i < len(aromatic) && aromatic[i] {
+		if aromatic[i] {
 			kinds[i] = aromaticBond
 		}
+	}
+	if !slices.ContainsFunc(m.Atoms, func(a molecule.Atom) bool { return a.Charge != 0 }) {
+		return kinds, free // nothing to shift
 	}
 	for start := range m.Atoms {
 		for _, path := range alternatingPaths(m, start) {

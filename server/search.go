@@ -70,10 +70,12 @@ func runSearch(cmd *cobra.Command, argument string, o *searchOptions) error {
 	}
 	problem, name, err := o.problem(cmd, argument)
 	var open *search.UnspecifiedError
-	if o.all && errors.As(err, &open) {
+	switch {
+	case errors.As(err, &open) && o.all:
 		return o.searchAll(cmd, open.Isomers)
-	}
-	if err != nil {
+	case errors.As(err, &open):
+		return fmt.Errorf("%w; or search them all with --all-stereoisomers", err)
+	case err != nil:
 		return err
 	}
 	document, failure := o.search(cmd, problem, name)

@@ -7,6 +7,7 @@ import (
 	"tarn/forcefield"
 	"tarn/molecule/notation"
 	"tarn/molecule/smiles"
+	"tarn/search"
 )
 
 // Understood is what Tarn read out of an input.
@@ -45,9 +46,12 @@ type StereoBond struct {
 // mostIsomers bounds the stereoisomers that are listed.
 const mostIsomers = 64
 
-// Understand describes a reading. It returns an error only if the symmetry cannot be found.
+// Understand describes a reading. It returns an error if the molecule is larger than can be searched, or its symmetry cannot be found.
 func Understand(r *notation.Reading) (Understood, error) {
 	m := r.Molecule
+	if n := len(m.Atoms); n > search.MaxAtoms {
+		return Understood{}, fmt.Errorf("the molecule has %d atoms with its hydrogens; at most %d can be searched", n, search.MaxAtoms)
+	}
 	u := Understood{
 		Molecule: Molecule{Name: r.Name, SMILES: smiles.Canonical(m), Formula: m.Formula(), Key: smiles.Key(m)},
 		MassU:    m.Mass(), Charge: m.Charge(), Atoms: len(m.Atoms), Bonds: len(m.Bonds), RotatableBonds: len(m.RotatableBonds()),
