@@ -14,8 +14,10 @@ import (
 	"tarn/store"
 )
 
-// keepAlive is how often an idle stream sends a comment, so that proxies leave it open.
-const keepAlive = 20 * time.Second
+const (
+	keepAlive = 20 * time.Second // how often an idle stream sends a comment, so that proxies leave it open
+	patience  = 30 * time.Second // how long a client may leave a message unread
+)
 
 func eventStream(op huma.Operation) huma.Operation {
 	op.Responses = map[string]*huma.Response{"200": {
@@ -59,22 +61,31 @@ func (s *server) stream(begin func(send func(store.Job) error) (done bool, err e
 		w.Header().Set("Content-Type", "text/event-stream")
 		w.Header().Set("Cache-Control", "no-store")
 		control := http.NewResponseController(w)
-		_ = control.SetWriteDeadline(time.Time{}) // a stream outlives the deadline of ordinary answers
 		listener := s.Queue.Listen()
 		defer listener.Close()
-		send := func(job store.Job) error {
-			if err := writeEvent(w, job); err != nil {
+		write := func(text string) error {
+			// A stream outlives the deadline of ordinary answers, but not a client that has stopped reading.
+			if err := control.SetWriteDeadline(time.Now().Add(patience)); err != nil {
+				return err
+			}
+			if _, err := io.WriteString(w, text); err != nil {
 				return err
 			}
 			return control.Flush()
 		}
-		if _, err := fmt.Fprint(w, "retry: 2000\n\n"); err != nil {
+		send := func(job store.Job) error {
+			data, err := json.Marshal(resource(job))
+			if err != nil {
+				return err
+			}
+			return write(fmt.Sprintf("event: job\ndata: %s\n\n", data))
+		}
+		if err := write("retry: 2000\n\n"); err != nil {
 			return
 		}
 		if done, err := begin(send); done || err != nil {
 			return
 		}
-		_ = control.Flush()
 		idle := time.NewTicker(keepAlive)
 		defer idle.Stop()
 		for {
@@ -82,7 +93,7 @@ func (s *server) stream(begin func(send func(store.Job) error) (done bool, err e
 			case <-r.Context().Done():
 				return
 			case <-idle.C:
-				if _, err := fmt.Fprint(w, ": alive\n\n"); err != nil || control.Flush() != nil {
+				if err := write(": alive\n\n"); err != nil {
 					return
 				}
 			case <-listener.Ready():
@@ -98,13 +109,4 @@ func (s *server) stream(begin func(send func(store.Job) error) (done bool, err e
 			}
 		}
 	}}
-}
-
-func writeEvent(w io.Writer, job store.Job) error {
-	data, err := json.Marshal(resource(job))
-	if err != nil {
-		return err
-	}
-	_, err = fmt.Fprintf(w, "event: job\ndata: %s\n\n", data)
-	return err
 }

@@ -3,6 +3,7 @@ package api
 import (
 	"log/slog"
 	"net/http"
+	"strings"
 	"time"
 
 	"github.com/danielgtaylor/huma/v2"
@@ -24,6 +25,7 @@ type Queue interface {
 	Pause(id string) (store.Job, error)
 	Resume(id string) (store.Job, error)
 	Cancel(id string) (store.Job, error)
+	JobsOf(key, field string) ([]store.Job, error)
 	Listen() *jobs.Listener
 }
 
@@ -33,7 +35,6 @@ type Library interface {
 	Molecules() ([]store.Molecule, error)
 	Fields(key string) ([]string, error)
 	Entries(key, field string) ([]store.Entry, error)
-	JobsOf(key, field string) ([]store.Job, error)
 }
 
 // Options of the handler.
@@ -59,10 +60,10 @@ type server struct {
 func New(o Options) http.Handler {
 	s := &server{o}
 	router := chi.NewRouter()
-	router.Use(middleware.RequestID, middleware.Recoverer, s.logRequests, middleware.Compress(5))
+	router.Use(middleware.RequestID, s.logRequests, s.recoverPanics, guard, refuseOtherSites, middleware.Compress(5))
 	router.NotFound(s.notFound)
 	router.MethodNotAllowed(func(w http.ResponseWriter, r *http.Request) {
-		writeProblem(w, huma.NewError(http.StatusMethodNotAllowed, r.Method+" is not possible on "+r.URL.Path))
+		newProblem(http.StatusMethodNotAllowed, r.Method+" is not possible on "+r.URL.Path+"; see /openapi.json").write(w)
 	})
 	router.Get("/healthz", ok)
 	router.Get("/readyz", s.ready)
@@ -109,7 +110,7 @@ func ok(w http.ResponseWriter, _ *http.Request) {
 func (s *server) ready(w http.ResponseWriter, r *http.Request) {
 	if _, err := s.Queue.Jobs("", 1); err != nil {
 		s.Log.Error("the store does not answer", "error", err)
-		writeProblem(w, huma.NewError(http.StatusServiceUnavailable, "the store does not answer; see the server's log"))
+		newProblem(http.StatusServiceUnavailable, "the store does not answer; see the server's log").write(w)
 		return
 	}
 	ok(w, r)
@@ -117,19 +118,9 @@ func (s *server) ready(w http.ResponseWriter, r *http.Request) {
 
 // notFound leaves everything outside the API to the page.
 func (s *server) notFound(w http.ResponseWriter, r *http.Request) {
-	if len(r.URL.Path) >= 5 && r.URL.Path[:5] == "/api/" || s.Page == nil {
-		writeProblem(w, huma.NewError(http.StatusNotFound, "there is nothing at "+r.URL.Path+"; the routes are listed in /openapi.json"))
+	if strings.HasPrefix(r.URL.Path, "/api/") || s.Page == nil {
+		newProblem(http.StatusNotFound, "there is nothing at "+r.URL.Path+"; the routes are listed in /openapi.json").write(w)
 		return
 	}
 	s.Page.ServeHTTP(w, r)
-}
-
-func (s *server) logRequests(next http.Handler) http.Handler {
-	return http.HandlerFunc(func(w http.ResponseWriter, r *http.Request) {
-		began := time.Now()
-		wrapped := middleware.NewWrapResponseWriter(w, r.ProtoMajor)
-		next.ServeHTTP(wrapped, r)
-		s.Log.Debug("request", "method", r.Method, "path", r.URL.Path, "status", wrapped.Status(), "seconds", time.Since(began).Seconds(),
-			"request", middleware.GetReqID(r.Context()))
-	})
 }

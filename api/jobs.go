@@ -89,6 +89,8 @@ type jobAnswer struct {
 func answer(j store.Job) *jobAnswer { return &jobAnswer{"/api/v1/jobs/" + j.ID, resource(j)} }
 
 func (s *server) submitJob(ctx context.Context, in *struct{ Body JobRequest }) (*jobAnswer, error) {
+	ctx, cancel := context.WithTimeout(ctx, requestTimeout)
+	defer cancel()
 	job, err := jobs.NewJob(ctx, in.Body.Molecule, in.Body.Field, in.Body.settings(), in.Body.Priority)
 	if err != nil {
 		return nil, s.refusal(ctx, err)
@@ -126,7 +128,7 @@ type jobList struct {
 
 func (s *server) listJobs(ctx context.Context, in *struct {
 	Limit  int    `query:"limit" default:"50" minimum:"1" maximum:"500"`
-	Cursor string `query:"cursor" maxLength:"20"`
+	Cursor string `query:"cursor" pattern:"^[0-9]{1,18}$" patternDescription:"the next_cursor of another answer"`
 },
 ) (*jobList, error) {
 	found, err := s.Queue.Jobs(in.Cursor, in.Limit)

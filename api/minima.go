@@ -4,6 +4,7 @@ import (
 	"cmp"
 	"context"
 	"fmt"
+	"math"
 	"mime"
 	"net/http"
 	"slices"
@@ -28,9 +29,20 @@ type minimaQuery struct {
 	Window       float64 `query:"window" minimum:"0" maximum:"1000" doc:"Energy range above the lowest minimum, kcal/mol; default: the widest that was searched"`
 	RMSD         float64 `query:"rmsd" minimum:"0" maximum:"100" doc:"Leave out minima closer than this, in Å over all atoms, to a lower one; populations are those of the whole list"`
 	Limit        int     `query:"limit" default:"1000" minimum:"1" maximum:"100000"`
-	Cursor       string  `query:"cursor" maxLength:"12" doc:"next_cursor of the page before"`
+	Cursor       string  `query:"cursor" pattern:"^[0-9]{1,9}$" patternDescription:"the next_cursor of another answer" doc:"next_cursor of the page before"`
 	Format       string  `query:"format" enum:"json,sdf,xyz,csv" doc:"Instead of the Accept header"`
 	Accept       string  `header:"Accept"`
+}
+
+// Resolve refuses what is written as a number but is none; huma calls it.
+func (q *minimaQuery) Resolve(huma.Context) []error {
+	var faults []error
+	for name, v := range map[string]float64{"temperature_k": q.TemperatureK, "window": q.Window, "rmsd": q.RMSD} {
+		if math.IsNaN(v) || math.IsInf(v, 0) {
+			faults = append(faults, &Fault{Location: "query." + name, Message: "expected a finite number"})
+		}
+	}
+	return faults
 }
 
 func minimaOperation(op huma.Operation) huma.Operation {
@@ -57,7 +69,7 @@ func (s *server) listMinima(ctx context.Context, in *minimaQuery) (*huma.StreamR
 		return nil, s.problem(ctx, err)
 	}
 	if reference == nil && format == report.SDF {
-		return nil, huma.NewError(http.StatusNotAcceptable, "a cluster has no bonds to write into an SD file; ask for xyz, csv or json")
+		return nil, newProblem(http.StatusNotAcceptable, "a cluster has no bonds to write into an SD file; ask for xyz, csv or json")
 	}
 	return &huma.StreamResponse{Body: func(hc huma.Context) {
 		hc.SetHeader("Content-Type", format.MediaType())
@@ -71,31 +83,37 @@ func (s *server) listMinima(ctx context.Context, in *minimaQuery) (*huma.StreamR
 	}}, nil
 }
 
+var acceptable = map[string]report.Format{
+	"application/json": report.JSON, "*/*": report.JSON, "application/*": report.JSON,
+	"chemical/x-mdl-sdfile": report.SDF, "chemical/x-xyz": report.XYZ, "text/csv": report.CSV, "text/*": report.CSV,
+}
+
 // format picks the format from the query or the Accept header.
 func (q *minimaQuery) format() (report.Format, error) {
 	if q.Format != "" {
 		return report.Format(q.Format), nil
 	}
-	for part := range strings.SplitSeq(q.Accept, ",") {
-		media, _, err := mime.ParseMediaType(part)
-		if err != nil {
-			continue
-		}
-		switch media {
-		case "application/json", "*/*", "application/*":
-			return report.JSON, nil
-		case "chemical/x-mdl-sdfile":
-			return report.SDF, nil
-		case "chemical/x-xyz":
-			return report.XYZ, nil
-		case "text/csv", "text/*":
-			return report.CSV, nil
-		}
-	}
 	if q.Accept == "" {
 		return report.JSON, nil
 	}
-	return "", huma.NewError(http.StatusNotAcceptable,
+	best, most := report.Format(""), 0.0
+	for part := range strings.SplitSeq(q.Accept, ",") {
+		media, parameters, err := mime.ParseMediaType(part)
+		if err != nil {
+			continue
+		}
+		weight := 1.0
+		if text, given := parameters["q"]; given {
+			weight, _ = strconv.ParseFloat(text, 64)
+		}
+		if f := acceptable[media]; f != "" && weight > most {
+			best, most = f, weight
+		}
+	}
+	if best != "" {
+		return best, nil
+	}
+	return "", newProblem(http.StatusNotAcceptable,
 		"minima come as application/json, chemical/x-mdl-sdfile, chemical/x-xyz or text/csv; or add ?format=json|sdf|xyz|csv")
 }
 
@@ -117,7 +135,7 @@ func (s *server) document(q *minimaQuery) (report.Document, *molecule.Molecule, 
 	if err != nil {
 		return d, nil, err
 	}
-	searches, err := s.Library.JobsOf(q.Key, d.Field)
+	searches, err := s.Queue.JobsOf(q.Key, d.Field)
 	if err != nil {
 		return d, nil, err
 	}
@@ -170,14 +188,18 @@ func describeSearches(d *report.Document, searches []store.Job) {
 
 // inWindow returns the described minima within a window of the lowest. Those above every window that was searched have no properties.
 func inWindow(entries []store.Entry, window float64) []search.Minimum {
+	lowest := math.Inf(1)
+	for i := range entries {
+		lowest = min(lowest, entries[i].Energy)
+	}
 	minima := make([]search.Minimum, 0, len(entries))
-	for _, e := range entries {
-		minima = append(minima, e.Minimum)
+	for i := range entries {
+		if m := entries[i].Minimum; m.Degeneracy > 0 && m.Energy <= lowest+window {
+			minima = append(minima, m)
+		}
 	}
 	slices.SortStableFunc(minima, func(a, b search.Minimum) int { return cmp.Compare(a.Energy, b.Energy) })
-	return slices.DeleteFunc(minima, func(m search.Minimum) bool {
-		return m.Degeneracy == 0 || m.Energy > minima[0].Energy+window
-	})
+	return minima
 }
 
 func atomsOf(minima []search.Minimum) int {

@@ -124,10 +124,16 @@ func Fragments(m *molecule.Molecule) []string {
 	return strings.Split(smiles.Canonical(m), ".")
 }
 
+// mostNamed is the number of atoms up to which the parts of an input are named in an error: canonical SMILES take their time.
+const mostNamed = 1000
+
 // single returns an error unless there is exactly one fragment.
 func single(m *molecule.Molecule) error {
 	if len(m.Atoms) == 0 {
 		return errors.New("the input holds no atoms; give at least one")
+	}
+	if n := len(m.Fragments()); n > 1 && len(m.Atoms) > mostNamed {
+		return fmt.Errorf("the input holds %d separate molecules; submit one of them by itself", n)
 	}
 	if parts := Fragments(m); parts != nil {
 		return &FragmentsError{parts}

@@ -101,6 +101,17 @@ func (r *Runner) Job(id string) (store.Job, error) {
 // Jobs is [store.Store.Jobs] with the latest progress of the running job.
 func (r *Runner) Jobs(before string, limit int) ([]store.Job, error) {
 	jobs, err := r.store.Jobs(before, limit)
+	return r.brought(jobs), err
+}
+
+// JobsOf is [store.Store.JobsOf] with the latest progress of the running job.
+func (r *Runner) JobsOf(key, field string) ([]store.Job, error) {
+	jobs, err := r.store.JobsOf(key, field)
+	return r.brought(jobs), err
+}
+
+// brought puts the running job, brought up to date, in its place.
+func (r *Runner) brought(jobs []store.Job) []store.Job {
 	r.mu.Lock()
 	defer r.mu.Unlock()
 	for i := range jobs {
@@ -108,7 +119,7 @@ func (r *Runner) Jobs(before string, limit int) ([]store.Job, error) {
 			jobs[i] = r.live
 		}
 	}
-	return jobs, err
+	return jobs
 }
 
 // Pause stops a job until it is resumed. A running one ends its round in flight unfinished and goes on from the checkpoint before it.
