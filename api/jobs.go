@@ -2,6 +2,7 @@ package api
 
 import (
 	"context"
+	"slices"
 	"time"
 
 	"tarn/ensemble/report"
@@ -65,7 +66,7 @@ func resource(j store.Job) Job {
 	out := Job{
 		ID: j.ID, State: j.State, Molecule: identity(j.Molecule), Field: j.Field, Method: j.Settings.Method, Seed: j.Settings.Seed,
 		Settings: j.Settings, Priority: j.Priority, Submitted: j.Submitted, Started: j.Started, Finished: j.Finished,
-		Progress: j.Progress, StopReason: j.StopReason, Warnings: report.Warnings(j.Counted), Error: j.Error,
+		Progress: j.Progress, StopReason: j.StopReason, Warnings: append(slices.Clone(j.Notes), report.Warnings(j.Counted)...), Error: j.Error,
 	}
 	if j.StopReason != "" {
 		out.Stopped = report.StopSentence(j.StopReason)

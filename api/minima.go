@@ -182,7 +182,7 @@ func describeSearches(d *report.Document, searches []store.Job) {
 		d.Quenches += job.Progress.Quenches
 		d.Evaluations += job.Progress.Evaluations
 		d.WallSeconds += job.Counted.ElapsedSeconds
-		d.Warnings = report.Warnings(job.Counted)
+		d.Warnings = append(slices.Clone(job.Notes), report.Warnings(job.Counted)...)
 	}
 }
 

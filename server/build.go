@@ -1,20 +1,15 @@
 package server
 
 import (
-	"errors"
 	"fmt"
-	"io"
 	"math/rand/v2"
-	"strings"
 
 	"github.com/spf13/cobra"
 
 	"tarn/forcefield"
 	"tarn/molecule"
-	"tarn/molecule/ctfile"
 	"tarn/molecule/embed"
 	"tarn/molecule/notation"
-	"tarn/molecule/xyz"
 	"tarn/search"
 )
 
@@ -52,7 +47,7 @@ func buildCommand() *cobra.Command {
 			if err != nil {
 				return err
 			}
-			defer func() { err = errors.Join(err, s.Close()) }()
+			defer func() { err = s.close(err) }()
 			return s.write(r, g)
 		},
 	}
@@ -79,16 +74,4 @@ func firstGeometry(cmd *cobra.Command, r *notation.Record, seed uint64) (molecul
 		return nil, err
 	}
 	return embed.Embed(cmd.Context(), m, f, rand.New(rand.NewPCG(seed, 0)))
-}
-
-// writeGeometry writes one geometry in a file format.
-func writeGeometry(w io.Writer, format notation.Format, r *notation.Record, g molecule.Geometry) error {
-	if format == notation.SDF {
-		return ctfile.WriteRecord(w, &ctfile.Record{Name: r.Name, Molecule: r.Molecule, Geometry: g})
-	}
-	elements := make([]molecule.Element, len(r.Molecule.Atoms))
-	for i, a := range r.Molecule.Atoms {
-		elements[i] = a.Element
-	}
-	return xyz.Write(w, strings.ReplaceAll(r.Name, "\n", " "), elements, g)
 }

@@ -1,6 +1,7 @@
 package server
 
 import (
+	"cmp"
 	"encoding/json"
 	"errors"
 	"fmt"
@@ -64,7 +65,7 @@ func energyCommand() *cobra.Command {
 		Use:   "energy FILE",
 		Short: "Energies of the coordinates in a file, one line a record",
 		Long: `FILE is .sdf, .mol or .xyz, or - for standard input. The coordinates are taken as they are. A record that cannot be
-used yields an error line, the others go on, and the exit status is 1.`,
+used yields an error line, the others go on, and the exit status is 1; if none can even be read it is 2.`,
 		Args: cobra.ExactArgs(1),
 		RunE: func(cmd *cobra.Command, args []string) error {
 			options, err := o.options()
@@ -144,7 +145,7 @@ type recordFault struct {
 }
 
 // eachGeometry calls use with every record of a file that has coordinates, and fault for the others. Records that fail make the command
-// end with a partialError after the last one.
+// end with a partialError after the last one, or with another error if there was nothing to use.
 func eachGeometry(cmd *cobra.Command, path string, charge int, use func(*notation.Record) error, fault func(recordFault) error) error {
 	if !isFile(path) {
 		return fmt.Errorf("%s: there is no such file; give a .sdf, .mol or .xyz file with coordinates, or -", path)
@@ -154,7 +155,8 @@ func eachGeometry(cmd *cobra.Command, path string, charge int, use func(*notatio
 		return err
 	}
 	defer closer.Close()
-	records, failed := 0, 0
+	records, used, failed := 0, 0, 0
+	var first error
 	for {
 		if err := cmd.Context().Err(); err != nil {
 			return &partialError{fmt.Sprintf("interrupted after %d records", records)}
@@ -167,12 +169,15 @@ func eachGeometry(cmd *cobra.Command, path string, charge int, use func(*notatio
 		var broken *notation.RecordError
 		switch {
 		case errors.As(err, &broken):
+			first = cmp.Or(first, err)
 			err = fault(recordFault{broken.Number, "", broken.Err})
 		case err != nil:
 			return err
 		case r.Geometry == nil:
+			first = cmp.Or(first, errNoCoordinates(r.Molecule))
 			err = fault(recordFault{r.Number, r.Name, errNoCoordinates(r.Molecule)})
 		default:
+			used++
 			err = use(r)
 		}
 		if errors.Is(err, errRecord) {
@@ -184,6 +189,8 @@ func eachGeometry(cmd *cobra.Command, path string, charge int, use func(*notatio
 	switch {
 	case records == 0:
 		return fmt.Errorf("%s holds no records", path)
+	case used == 0:
+		return fmt.Errorf("no record of %s can be used: %w", path, first)
 	case failed > 0:
 		return &partialError{fmt.Sprintf("%d of %d records failed", failed, records)}
 	}

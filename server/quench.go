@@ -2,10 +2,8 @@ package server
 
 import (
 	"encoding/json"
-	"errors"
 	"fmt"
 	"io"
-	"os"
 
 	"github.com/spf13/cobra"
 
@@ -40,7 +38,7 @@ and the exit status is 1.`,
 			if err != nil {
 				return err
 			}
-			defer func() { err = errors.Join(err, sink.Close()) }()
+			defer func() { err = sink.close(err) }()
 			return eachGeometry(cmd, args[0], o.charge, func(r *notation.Record) error {
 				out := o.quench(cmd, r, options)
 				if out.Error == "" {
@@ -109,39 +107,4 @@ func (o *fieldOptions) printQuench(w io.Writer, r quenchRecord) error {
 		err = errRecord
 	}
 	return err
-}
-
-// sink writes geometries to a file, or nowhere.
-type sink struct {
-	file   *os.File
-	format notation.Format
-}
-
-func openSink(path string) (*sink, error) {
-	if path == "" {
-		return &sink{}, nil
-	}
-	format := notation.FormatOf(path)
-	if format != notation.SDF && format != notation.XYZ {
-		return nil, fmt.Errorf("the output file %s must end in .sdf, .mol or .xyz", path)
-	}
-	f, err := os.Create(path)
-	if err != nil {
-		return nil, fmt.Errorf("the output file cannot be written: %w", err)
-	}
-	return &sink{f, format}, nil
-}
-
-func (s *sink) write(r *notation.Record, g []float64) error {
-	if s.file == nil {
-		return nil
-	}
-	return writeGeometry(s.file, s.format, r, g)
-}
-
-func (s *sink) Close() error {
-	if s.file == nil {
-		return nil
-	}
-	return s.file.Close()
 }

@@ -30,16 +30,26 @@ func (e *partialError) Error() string { return e.reason }
 func Main(arguments []string, in io.Reader, out, errOut io.Writer) int {
 	ctx, stop := signal.NotifyContext(context.Background(), syscall.SIGINT, syscall.SIGTERM)
 	defer stop()
+	context.AfterFunc(ctx, stop) // a second signal ends the program at once
+	return run(ctx, arguments, in, out, errOut)
+}
+
+func run(ctx context.Context, arguments []string, in io.Reader, out, errOut io.Writer) int {
 	root := command(in, out, errOut)
 	root.SetArgs(arguments)
 	err := root.ExecuteContext(ctx)
-	if err == nil {
+	var partial *partialError
+	switch {
+	case err == nil:
 		return exitDone
-	}
-	fmt.Fprintln(errOut, "tarn:", err)
-	if partial := (*partialError)(nil); errors.As(err, &partial) {
+	case errors.As(err, &partial):
+		fmt.Fprintln(errOut, "tarn:", err)
+		return exitPartial
+	case errors.Is(err, context.Canceled):
+		fmt.Fprintln(errOut, "tarn: interrupted before there was anything to show")
 		return exitPartial
 	}
+	fmt.Fprintln(errOut, "tarn:", err)
 	return exitUnusable
 }
 
@@ -60,6 +70,10 @@ no basis for clinical, safety or regulatory decisions.`,
 	root.SetOut(out)
 	root.SetErr(errOut)
 	root.CompletionOptions.HiddenDefaultCmd = true
-	root.AddCommand(serveCommand(), searchCommand(), energyCommand(), quenchCommand(), buildCommand(), moleculeCommand())
+	root.AddCommand(serveCommand(), searchCommand(), energyCommand(), quenchCommand(), buildCommand(), moleculeCommand(),
+		&cobra.Command{
+			Use: "version", Short: "Print the version of the program", Args: cobra.NoArgs,
+			Run: func(cmd *cobra.Command, _ []string) { fmt.Fprintln(cmd.OutOrStdout(), "tarn", Version) },
+		})
 	return root
 }

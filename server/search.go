@@ -8,7 +8,6 @@ import (
 	"io"
 	"os"
 	"path/filepath"
-	"slices"
 	"strings"
 	"time"
 
@@ -18,6 +17,7 @@ import (
 
 	"tarn/ensemble/report"
 	"tarn/molecule"
+	"tarn/molecule/notation"
 	"tarn/molecule/smiles"
 	"tarn/search"
 	"tarn/server/jobs"
@@ -68,33 +68,39 @@ func runSearch(cmd *cobra.Command, argument string, o *searchOptions) error {
 	if err := o.check(cmd); err != nil {
 		return err
 	}
-	problem, name, err := o.problem(cmd, argument)
+	problem, subject, err := o.problem(cmd, argument)
 	var open *search.UnspecifiedError
 	switch {
 	case errors.As(err, &open) && o.all:
-		return o.searchAll(cmd, open.Isomers)
+		return o.searchAll(cmd, open.Isomers, subject)
 	case errors.As(err, &open):
 		return fmt.Errorf("%w; or search them all with --all-stereoisomers", err)
 	case err != nil:
 		return err
 	}
-	document, failure := o.search(cmd, problem, name)
-	if failure != nil && document == nil {
+	if err := o.checkOutput(problem); err != nil {
+		return err
+	}
+	document, failure := o.search(cmd, problem, subject)
+	if document == nil {
 		return failure
 	}
 	return errors.Join(o.print(cmd.OutOrStdout(), *document, problem), failure)
 }
 
 // searchAll searches stereoisomers one after the other.
-func (o *searchOptions) searchAll(cmd *cobra.Command, isomers []*molecule.Molecule) error {
+func (o *searchOptions) searchAll(cmd *cobra.Command, isomers []*molecule.Molecule, subject *notation.Reading) error {
 	documents := make([]report.Document, 0, len(isomers))
 	for i, m := range isomers {
 		problem, err := search.NewMoleculeProblem(cmd.Context(), m, o.field, nil, o.settings.Seed)
 		if err != nil {
 			return fmt.Errorf("stereoisomer %s: %w", smiles.Canonical(m), err)
 		}
-		document, failure := o.search(cmd, problem, m.Name)
-		if failure != nil && document == nil {
+		if err := o.checkOutput(problem); err != nil {
+			return err
+		}
+		document, failure := o.search(cmd, problem, subject)
+		if document == nil {
 			return failure
 		}
 		one := *o
@@ -120,34 +126,39 @@ func (o *searchOptions) searchAll(cmd *cobra.Command, isomers []*molecule.Molecu
 }
 
 // search runs one search. If it is interrupted it returns what the finished rounds have found together with the error.
-func (o *searchOptions) search(cmd *cobra.Command, problem *search.Problem, name string) (*report.Document, error) {
-	ctx := cmd.Context()
+func (o *searchOptions) search(cmd *cobra.Command, problem *search.Problem, subject *notation.Reading) (*report.Document, error) {
 	var last search.Checkpoint
-	var progress search.Progress
 	show, finish := progressOn(cmd.ErrOrStderr())
-	result, err := search.Run(ctx, problem, o.settings, nil, search.Hooks{
-		Progress: func(p search.Progress) {
-			progress = p
-			show(p)
-		},
-		Checkpoint: func(c search.Checkpoint) error {
-			last = c
-			last.Minima = slices.Clone(c.Minima)
-			return nil
-		},
+	result, err := search.Run(cmd.Context(), problem, o.settings, nil, search.Hooks{
+		Progress:   show,
+		Checkpoint: func(c search.Checkpoint) error { last = c; return nil },
 	})
 	finish()
 	interrupted := errors.Is(err, context.Canceled) && len(last.Minima) > 0
 	if interrupted {
-		result = resultSoFar(last, progress, o.settings.WithDefaults(problem.Cluster()))
-	} else if err != nil {
+		result, err = o.soFar(problem, last)
+	}
+	if err != nil {
 		return nil, err
 	}
-	document := documentOf(jobs.Identity(name, problem), problem, result)
+	document := documentOf(jobs.Identity(subject.Name, problem), problem, result)
+	document.Warnings = append(jobs.Notes(subject, problem), document.Warnings...)
 	if interrupted {
+		document.StopReason = ""
 		return &document, &partialError{"interrupted; the minima of the finished rounds are above"}
 	}
 	return &document, nil
+}
+
+// soFar ranks and describes what a search had found at a checkpoint, as if that had been its budget.
+func (o *searchOptions) soFar(p *search.Problem, c search.Checkpoint) (*search.Result, error) {
+	spent := o.settings
+	spent.MaxQuenches = c.Quenches
+	result, err := search.Run(context.Background(), p, spent, &c, search.Hooks{})
+	if err == nil {
+		result.Settings = o.settings.WithDefaults(p.Cluster())
+	}
+	return result, err
 }
 
 // check refuses options that cannot be used, among them budgets of zero that were asked for in so many words.
@@ -172,64 +183,70 @@ func (o *searchOptions) check(cmd *cobra.Command) error {
 	return o.settings.Validate()
 }
 
-func (o *searchOptions) problem(cmd *cobra.Command, argument string) (p *search.Problem, name string, err error) {
+// checkOutput finds out before the search whether its result can be written.
+func (o *searchOptions) checkOutput(p *search.Problem) error {
+	if o.output == "" {
+		return nil
+	}
+	if strings.EqualFold(filepath.Ext(o.output), ".sdf") && p.Cluster() {
+		return errors.New("a cluster has no bonds to write into an SD file; use .xyz, .csv or .json")
+	}
+	d, err := newDraft(o.output)
+	if err != nil {
+		return err
+	}
+	return errors.Join(d.File.Close(), os.Remove(d.Name()))
+}
+
+// problem prepares the search of an INPUT argument, and returns what was read.
+func (o *searchOptions) problem(cmd *cobra.Command, argument string) (*search.Problem, *notation.Reading, error) {
 	n, cluster, err := clusterSize(argument)
 	if err != nil {
-		return nil, "", err
+		return nil, nil, err
 	}
 	if cluster {
 		if o.field != "" && o.field != "lj" {
-			return nil, "", fmt.Errorf("a Lennard-Jones cluster takes --field lj")
+			return nil, nil, fmt.Errorf("a Lennard-Jones cluster takes --field lj")
 		}
-		p, err = search.NewClusterProblem(n)
-		return p, "", err
+		p, err := search.NewClusterProblem(n)
+		return p, &notation.Reading{}, err
 	}
 	r, err := readOne(cmd, argument, o.record, o.charge)
 	if err != nil {
-		return nil, "", err
+		return nil, nil, err
 	}
 	m, err := r.Single()
 	if err != nil {
-		return nil, "", err
+		return nil, nil, err
 	}
-	p, err = search.NewMoleculeProblem(cmd.Context(), m, o.field, r.Geometry, o.settings.Seed)
-	return p, r.Name, err
+	p, err := search.NewMoleculeProblem(cmd.Context(), m, o.field, r.Geometry, o.settings.Seed)
+	return p, &r.Reading, err
 }
 
-// resultSoFar reports the finished rounds of an interrupted search.
-func resultSoFar(c search.Checkpoint, p search.Progress, s search.Settings) *search.Result {
-	r := &search.Result{Settings: s, Counted: c.Counted, Coverage: p.Coverage}
-	for _, m := range c.Minima {
-		if m.Degeneracy > 0 {
-			r.Minima = append(r.Minima, m)
-		}
-	}
-	return r
-}
-
+// print shows a document first: what takes long to find must not be lost because a file cannot be written.
 func (o *searchOptions) print(out io.Writer, d report.Document, p *search.Problem) error {
-	if o.output != "" {
-		if err := writeOutput(o.output, d, p); err != nil {
-			return err
-		}
-	}
+	var shown error
 	if o.json {
-		return report.Write(out, report.JSON, d, p.Molecule)
+		shown = report.Write(out, report.JSON, d, p.Molecule)
+	} else {
+		shown = report.WriteTable(out, d)
 	}
-	return report.WriteTable(out, d)
+	if o.output == "" {
+		return shown
+	}
+	return errors.Join(shown, writeOutput(o.output, d, p))
 }
 
-func writeOutput(path string, d report.Document, p *search.Problem) (err error) {
+func writeOutput(path string, d report.Document, p *search.Problem) error {
 	format, err := outputFormat(path)
 	if err != nil {
 		return err
 	}
-	f, err := os.Create(path)
+	f, err := newDraft(path)
 	if err != nil {
-		return fmt.Errorf("the output file cannot be written: %w", err)
+		return err
 	}
-	defer func() { err = errors.Join(err, f.Close()) }()
-	return report.Write(f, format, d, p.Molecule)
+	return f.close(report.Write(f, format, d, p.Molecule))
 }
 
 func outputFormat(path string) (report.Format, error) {

@@ -36,7 +36,8 @@ type Job struct {
 	Molecule Molecule        `json:"molecule"`
 	Field    string          `json:"field"`
 	Settings search.Settings `json:"settings"`
-	Priority int             `json:"priority"` // higher runs first
+	Priority int             `json:"priority"`        // higher runs first
+	Notes    []string        `json:"notes,omitempty"` // what the user should know of the input
 
 	Submitted time.Time `json:"submitted"`
 	Started   time.Time `json:"started,omitzero"`

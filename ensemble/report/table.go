@@ -24,7 +24,30 @@ func WriteTable(w io.Writer, d Document) error {
 		len(d.Minima), d.Settings.WindowKcal, unit, fieldTitle(d.Field), d.Quenches, d.Evaluations, d.WallSeconds)
 	fmt.Fprintf(w, "coverage %s, about %s minima unseen; stopped because %s\n\n",
 		interval(d.Coverage), count(d.Coverage.Unseen), StopSentence(search.StopReason(d.StopReason)))
+	if err := writeRows(w, d, unit); err != nil {
+		return err
+	}
+	fmt.Fprintln(w)
+	if d.Field != "lj" { // a temperature in kelvin has no meaning in reduced units
+		fmt.Fprintf(w, "Populations at %g K; ", d.TemperatureK)
+	}
+	fmt.Fprintln(w, "g is the number of versions (symmetry, mirror images), sigma the rotational symmetry number.")
+	for _, warning := range d.Warnings {
+		fmt.Fprintf(w, "Note: %s\n", warning)
+	}
+	_, err := fmt.Fprintln(w, Caution)
+	return err
+}
+
+func writeRows(w io.Writer, d Document, unit string) error {
 	t := tabwriter.NewWriter(w, 0, 0, 2, ' ', tabwriter.AlignRight)
+	if d.Field == "lj" {
+		fmt.Fprintf(t, "rank\tE / %s\tdE\tg\tsigma\thits\t\n", unit)
+		for _, m := range d.Minima {
+			fmt.Fprintf(t, "%d\t%.6f\t%.6f\t%d\t%d\t%d\t\n", m.Rank, m.Energy, m.Relative, m.Degeneracy, m.SymmetryNumber, m.Hits)
+		}
+		return t.Flush()
+	}
 	fmt.Fprintf(t, "rank\tE / %s\tdE\tpopulation\tfree-energy pop.\tg\tsigma\thits\tdipole / D\tlowest mode / cm-1\t\n", unit)
 	for _, m := range d.Minima {
 		free := "-"
@@ -34,15 +57,7 @@ func WriteTable(w io.Writer, d Document) error {
 		fmt.Fprintf(t, "%d\t%.4f\t%.4f\t%s\t%s\t%d\t%d\t%d\t%.3f\t%.1f\t\n",
 			m.Rank, m.Energy, m.Relative, percent(m.Population), free, m.Degeneracy, m.SymmetryNumber, m.Hits, m.DipoleDebye, m.LowestModeCM1)
 	}
-	if err := t.Flush(); err != nil {
-		return err
-	}
-	fmt.Fprintf(w, "\nPopulations at %g K; g is the number of versions (symmetry, mirror images), sigma the rotational symmetry number.\n", d.TemperatureK)
-	for _, warning := range d.Warnings {
-		fmt.Fprintf(w, "Note: %s\n", warning)
-	}
-	_, err := fmt.Fprintln(w, Caution)
-	return err
+	return t.Flush()
 }
 
 // StopSentence says in words why a search ended.

@@ -3,7 +3,10 @@ package jobs
 import (
 	"context"
 	"fmt"
+	"slices"
+	"strings"
 
+	"tarn/forcefield"
 	"tarn/molecule"
 	"tarn/molecule/notation"
 	"tarn/molecule/smiles"
@@ -17,16 +20,30 @@ func NewJob(ctx context.Context, in notation.Input, field string, s search.Setti
 	if err := s.Validate(); err != nil {
 		return store.Job{}, err
 	}
-	p, name, err := problemOf(ctx, in, field, s.Seed)
+	p, reading, err := problemOf(ctx, in, field, s.Seed)
 	if err != nil {
 		return store.Job{}, err
 	}
-	if in.Name != "" {
-		name = in.Name
-	}
 	return store.Job{
-		Input: in, Molecule: Identity(name, p), Field: p.FieldName, Settings: s.WithDefaults(p.Cluster()), Priority: priority,
+		Input: in, Molecule: Identity(reading.Name, p), Notes: Notes(reading, p), Field: p.FieldName,
+		Settings: s.WithDefaults(p.Cluster()), Priority: priority,
 	}, nil
+}
+
+// Notes says in sentences what the user should know of an input before the search begins: where it was read in one of several ways, and
+// where the force field had to guess parameters.
+func Notes(r *notation.Reading, p *search.Problem) []string {
+	notes := slices.Clone(r.Notes)
+	f, ok := p.Field.(*forcefield.MMFF94)
+	if !ok {
+		return notes
+	}
+	if guessed := f.Empirical(); len(guessed) > 0 {
+		first := guessed[0]
+		notes = append(notes, fmt.Sprintf("%d parameter(s) of the force field come from empirical rules and deserve less trust, the first one for the %s of atoms %s",
+			len(guessed), first.Term, strings.Trim(strings.ReplaceAll(fmt.Sprint(first.Atoms), " ", "-"), "[]")))
+	}
+	return notes
 }
 
 // Identity returns what a molecule or cluster is known by.
@@ -40,24 +57,24 @@ func Identity(name string, p *search.Problem) store.Molecule {
 	}
 }
 
-// problemOf prepares an input for a search in a field and returns the name that the input itself carries.
-func problemOf(ctx context.Context, in notation.Input, field string, seed uint64) (*search.Problem, string, error) {
+// problemOf prepares an input for a search in a field and returns what was read; nothing but the name for a cluster.
+func problemOf(ctx context.Context, in notation.Input, field string, seed uint64) (*search.Problem, *notation.Reading, error) {
 	if in.LJ > 0 {
 		if in.SMILES+in.Molfile+in.XYZ != "" {
-			return nil, "", &notation.InputError{Part: "molecule", Err: notation.ErrChoice}
+			return nil, nil, &notation.InputError{Part: "molecule", Err: notation.ErrChoice}
 		}
 		if field != "" && field != "lj" {
-			return nil, "", &search.SettingError{Name: "field", Reason: "a Lennard-Jones cluster takes the field lj"}
+			return nil, nil, &search.SettingError{Name: "field", Reason: "a Lennard-Jones cluster takes the field lj"}
 		}
 		p, err := search.NewClusterProblem(in.LJ)
-		return p, "", err
+		return p, &notation.Reading{Name: in.Name}, err
 	}
 	reading, err := in.Read()
 	if err != nil {
-		return nil, "", err
+		return nil, nil, err
 	}
 	p, err := search.NewMoleculeProblem(ctx, reading.Molecule, field, reading.Geometry, seed)
-	return p, reading.Name, err
+	return p, reading, err
 }
 
 // Reference returns the molecule of a library with its atoms in the order of the library; nil for a cluster.
