@@ -124,7 +124,7 @@ func queueDemo(ctx context.Context, st *store.Store, runner *jobs.Runner) error 
 	if err != nil || len(existing) > 0 {
 		return err
 	}
-	job, err := jobs.NewJob(ctx, demonstration, "mmff94", search.Settings{Seed: 1, WindowKcal: 3}, 0)
+	job, err := jobs.NewJob(ctx, demonstration, "mmff94", search.Settings{Seed: 1, WindowKcal: 2, Coverage: 0.95}, 0)
 	if err != nil {
 		return err
 	}
