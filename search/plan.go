@@ -62,7 +62,7 @@ func (p *Problem) quotaOf() int {
 // about others, however long they are.
 const fewMinima = 3
 
-// plan makes the plans of the next round from the checkpoint and the seed alone. Of every four starts one is the lowest minimum or, with
+// plan makes the plans of the next round from the checkpoint and the seed alone. For a molecule, of every four starts one is the lowest minimum or, with
 // falling chance, one near it; one is a minimum in the window that was drawn least often; one is any minimum in the window; and
 // one is built anew, by distance geometry or as a random cluster. The first round builds all anew, and so do those that know one minimum.
 func (r *run) plan() []plan {
@@ -81,26 +81,45 @@ func (r *run) plan() []plan {
 			break
 		}
 		pl := plan{number: number, kind: available[number%len(available)], start: -1, quota: quota}
-		if r.problem.Cluster() && pl.kind == thermal && number%4 != 3 {
-			pl.kind = overMinima // which finds far more minima of clusters
-		}
-		if r.problem.Cluster() && r.problem.Atoms() <= scatterAtoms && number >= scatterFrom {
-			pl.kind = scatter
-		} else if len(inWindow) > 1 {
+		switch {
+		case r.problem.Cluster():
+			r.planCluster(&pl, inWindow, rng)
+		case len(inWindow) > 1:
 			switch (number / 2) % 4 {
 			case 0:
 				pl.start = inWindow[lowRank(len(inWindow), rng)]
 			case 1:
-				pl.start, pl.wide = r.leastDrawn(inWindow, number%2, rng), true
+				pl.start = r.leastDrawn(inWindow, number%2, rng)
 			case 2:
 				if len(inWindow) > fewMinima {
-					pl.start, pl.wide = inWindow[rng.IntN(len(inWindow))], true
+					pl.start = inWindow[rng.IntN(len(inWindow))]
 				}
 			}
 		}
 		plans = append(plans, pl)
 	}
 	return plans
+}
+
+// planCluster decides for a cluster. Of a small one all minima are wanted: half of the walks scatter, a quarter goes down from low minima, a
+// quarter roams from those that were drawn least often. Of a large one only the lowest can be had: three quarters of the walks start anew,
+// one goes on from a low minimum and one roams from any; walking on the surface finds little there and is left to one walk in eight.
+func (r *run) planCluster(pl *plan, inWindow []int, rng *rand.Rand) {
+	small := r.problem.Atoms() <= scatterAtoms
+	if pl.kind == thermal && pl.number != 3 {
+		pl.kind = overMinima
+	}
+	switch {
+	case small && pl.number >= scatterFrom:
+		pl.kind = scatter
+	case len(inWindow) < 2:
+	case pl.number == 0 || small && pl.number == 1:
+		pl.start = inWindow[lowRank(len(inWindow), rng)]
+	case small:
+		pl.start, pl.wide = r.leastDrawn(inWindow, pl.number%2, rng), true
+	case pl.number == 1:
+		pl.start, pl.wide = inWindow[rng.IntN(len(inWindow))], true
+	}
 }
 
 // lowRank draws a rank, the lowest most often: half of the time 0, else each further one with three quarters of the chance of the one before.

@@ -9,8 +9,8 @@ import (
 const (
 	// slack is how far the low end of the interval may lie below the target (0.95 for 0.99).
 	slack = 0.04
-	// leastRounds is the number of rounds below which nothing is believed.
-	leastRounds = 4
+	// leastRounds is the number of rounds below which nothing is believed; each degree of freedom of a molecule adds one.
+	leastRounds = 3
 	// recent is the share of the rounds, the last ones, in which hardly anything new may have been found; it is two rounds at least.
 	recent = 0.25
 	// clusterRecent is the same for clusters, some of whose minima are hit once in a hundred thousand quenches.
@@ -48,7 +48,7 @@ func (r *run) complete(c coverage.Counts) bool {
 	target := r.settings.Coverage
 	now := coverageOf(c)
 	allowed := max(0.5, (1-target)*float64(c.Observed))
-	return r.checkpoint.Round >= leastRounds && c.Draws > 0 &&
+	return r.checkpoint.Round >= leastRounds+max(1, r.problem.moves.Freedom()) && c.Draws > 0 &&
 		now.Estimate >= target && now.Low >= target-slack && now.Unseen <= allowed && float64(r.foundLately()) <= allowed
 }
 

@@ -161,10 +161,27 @@ func component(m *molecule.Molecule, start int, wall func(int) bool) []int {
 	return reached
 }
 
-// inversionOf accepts neutral nitrogen with three single bonds that is no stereocentre and no bridgehead.
+// amideLike tells whether a nitrogen shares its lone pair with a carbon that is doubly bonded to oxygen, nitrogen or sulfur, which makes it
+// planar or nearly so.
+func amideLike(m *molecule.Molecule, nitrogen int) bool {
+	for _, n := range m.Neighbors(nitrogen) {
+		if m.Atoms[n.Atom].Element != 6 {
+			continue
+		}
+		for _, next := range m.Neighbors(n.Atom) {
+			e := m.Atoms[next.Atom].Element
+			if m.Bonds[next.Bond].Order == 2 && (e == 7 || e == 8 || e == 16) {
+				return true
+			}
+		}
+	}
+	return false
+}
+
+// inversionOf accepts neutral nitrogen with three single bonds that is no amide, no stereocentre and no bridgehead.
 func inversionOf(m *molecule.Molecule, atom int, ring []bool) (Inversion, bool) {
 	around := m.Neighbors(atom)
-	if m.Atoms[atom].Element != 7 || len(around) != 3 || m.Atoms[atom].Charge != 0 {
+	if m.Atoms[atom].Element != 7 || len(around) != 3 || m.Atoms[atom].Charge != 0 || amideLike(m, atom) {
 		return Inversion{}, false
 	}
 	for _, c := range m.Centers {
