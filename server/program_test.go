@@ -171,7 +171,7 @@ func TestSearchWritesTheFileAskedFor(t *testing.T) {
 
 func TestInterruptedSearchPrintsWhatItHasFound(t *testing.T) {
 	ctx, cancel := context.WithCancel(t.Context())
-	time.AfterFunc(3*time.Second, cancel)                                                           // any moment will do
+	time.AfterFunc(2*time.Second, cancel)                                                           // any moment will do
 	o := tarnUntil(ctx, "", "search", "CCCCCCCCCCC", "--json", "--coverage", "1", "--window", "20") // far from done by then
 	require.Equal(t, exitPartial, o.status)
 	require.Contains(t, o.err, "interrupted")
