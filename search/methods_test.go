@@ -34,7 +34,7 @@ var errSpent = errors.New("the budget of evaluations is spent")
 func after(tb testing.TB, p *search.Problem, method search.Method, seed uint64, budgets []int) [][]search.Minimum {
 	tb.Helper()
 	var found [][]search.Minimum
-	_, err := search.Run(context.Background(), p, search.Settings{Method: method, Seed: seed, Coverage: 1, MaxQuenches: 1 << 40}, nil,
+	result, err := search.Run(context.Background(), p, search.Settings{Method: method, Seed: seed, Coverage: 1, MaxQuenches: 1 << 40}, nil,
 		search.Hooks{Checkpoint: func(c search.Checkpoint) error {
 			for len(found) < len(budgets) && c.Evaluations >= budgets[len(found)] {
 				found = append(found, c.Minima)
@@ -46,6 +46,10 @@ func after(tb testing.TB, p *search.Problem, method search.Method, seed uint64, 
 		}})
 	if err != nil {
 		require.ErrorIs(tb, err, errSpent)
+		return found
+	}
+	for len(found) < len(budgets) { // it was sure that it had everything
+		found = append(found, result.Checkpoint.Minima)
 	}
 	return found
 }
