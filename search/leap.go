@@ -52,9 +52,9 @@ func moleculeLeap(x []float64, s *moves.Set, rng *rand.Rand) (changed int) {
 		changed++
 	}
 	for range changed {
-		switch k := rng.IntN(freedom); {
+		switch k := pick(s, rng); {
 		case k < len(s.Torsions):
-			s.Torsions[rng.IntN(len(s.Torsions))].Rotate(x, math.Pi*(2*rng.Float64()-1))
+			turnTorsion(x, &s.Torsions[k], rng)
 		case k < len(s.Torsions)+len(s.Inversions):
 			s.Inversions[rng.IntN(len(s.Inversions))].Apply(x)
 		default:
@@ -67,6 +67,28 @@ func moleculeLeap(x []float64, s *moves.Set, rng *rand.Rand) (changed int) {
 		}
 	}
 	return changed
+}
+
+// stiffShare is how often a partly double bond is taken when it is picked: it has two states, others more.
+const stiffShare = 0.3
+
+// pick chooses a degree of freedom: torsions first, then inversions, then those of rings.
+func pick(s *moves.Set, rng *rand.Rand) int {
+	for {
+		k := rng.IntN(s.Freedom())
+		if k >= len(s.Torsions) || !s.Torsions[k].Stiff || rng.Float64() < stiffShare {
+			return k
+		}
+	}
+}
+
+// turnTorsion turns a bond by any angle, or to the other state if it is partly double.
+func turnTorsion(x []float64, t *moves.Torsion, rng *rand.Rand) {
+	angle := math.Pi * (2*rng.Float64() - 1)
+	if t.Stiff {
+		angle = math.Pi + 0.3*(2*rng.Float64()-1)
+	}
+	t.Rotate(x, angle)
 }
 
 // clusterLeap shifts all atoms or resettles the most loosely bound.

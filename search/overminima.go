@@ -20,25 +20,22 @@ func (w *walker) minimaLimits() limits {
 
 // minimaWalk is Monte Carlo over minima: a large move, a quench, and the Metropolis criterion on the energies of the minima before and
 // after. Sources: Z. Li, H. A. Scheraga, Proc. Natl. Acad. Sci. USA 84, 6611 (1987); D. J. Wales, J. P. K. Doye, J. Phys. Chem. A 101,
-// 5111 (1997). The temperature starts from the uphill moves of a first stage that accepts everything, is cooled by the same schedule as
+// 5111 (1997). The temperature starts from the uphill moves of a first, hottest stage, is cooled by the same schedule as
 // other annealing, and reheated when cold.
 func (w *walker) minimaWalk(ctx context.Context, start []float64, energy float64) error {
 	here := append([]float64(nil), start...)
 	trial := make([]float64, len(here))
 	span := w.minimaLimits()
 	factor, slowness := schedule.Reheat(w.reheat)
-	hottest, kT := span.hottest, math.Inf(1)
+	hottest := span.hottest
+	kT := hottest
 	const length = 6 // quenches a stage
 	for stage := 0; ; stage++ {
 		var uphill []float64
 		accepted, tried, sum, square := 0, 0.0, 0.0, 0.0
 		for range length {
 			w.leap(trial, here, energy)
-			shown := kT
-			if math.IsInf(kT, 1) {
-				shown = hottest
-			}
-			o, err := w.quench(ctx, trial, w.kelvin(shown))
+			o, err := w.quench(ctx, trial, w.kelvin(kT))
 			if o.usable() {
 				tried++
 				if o.energy > energy {

@@ -6,7 +6,7 @@ import (
 	"slices"
 )
 
-// walkKind is what a walk does. Method anneal shares its walks among the first two, dynamics has the third alone, mixed all.
+// walkKind is what a walk does.
 type walkKind int
 
 const (
@@ -23,15 +23,16 @@ func (k walkKind) String() string {
 // walksInRound is the number of walks of a round, whatever the number of workers: two for each way to choose a start.
 const walksInRound = 8
 
-// kinds returns the kinds of walk of a method; the walks of a round take them in turn.
+// kinds returns the kinds of walk of a method; the walks of a round take them in turn. Monte Carlo over minima finds most for its cost, the
+// others find what it finds last (docs/search.md shows the comparison).
 func kinds(m Method) []walkKind {
 	switch m {
 	case Dynamics:
 		return []walkKind{trajectory}
 	case Mixed:
-		return []walkKind{overMinima, trajectory}
+		return []walkKind{overMinima, overMinima, overMinima, trajectory}
 	}
-	return []walkKind{overMinima, thermal}
+	return []walkKind{overMinima, overMinima, overMinima, thermal}
 }
 
 // plan is what a walk is told to do.

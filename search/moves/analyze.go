@@ -76,6 +76,7 @@ func torsionOf(m *molecule.Molecule, b molecule.Bond, done map[int]bool) (Torsio
 	if len(sideA) < len(sideB) {
 		t.Atoms = sideA
 	}
+	t.Stiff = partlyDouble(m, a, bb) || partlyDouble(m, bb, a)
 	t.Atoms = slices.DeleteFunc(t.Atoms, func(i int) bool { return i == a || i == bb })
 	return t, kind
 }
@@ -161,18 +162,27 @@ func component(m *molecule.Molecule, start int, wall func(int) bool) []int {
 	return reached
 }
 
+// partlyDouble tells whether a carbon that is doubly bonded to oxygen, nitrogen or sulfur is bonded to an atom that shares a lone pair with it.
+func partlyDouble(m *molecule.Molecule, carbon, donor int) bool {
+	e := m.Atoms[donor].Element
+	if m.Atoms[carbon].Element != 6 || e != 7 && e != 8 && e != 16 {
+		return false
+	}
+	for _, n := range m.Neighbors(carbon) {
+		e := m.Atoms[n.Atom].Element
+		if n.Atom != donor && m.Bonds[n.Bond].Order == 2 && (e == 7 || e == 8 || e == 16) {
+			return true
+		}
+	}
+	return false
+}
+
 // amideLike tells whether a nitrogen shares its lone pair with a carbon that is doubly bonded to oxygen, nitrogen or sulfur, which makes it
 // planar or nearly so.
 func amideLike(m *molecule.Molecule, nitrogen int) bool {
 	for _, n := range m.Neighbors(nitrogen) {
-		if m.Atoms[n.Atom].Element != 6 {
-			continue
-		}
-		for _, next := range m.Neighbors(n.Atom) {
-			e := m.Atoms[next.Atom].Element
-			if m.Bonds[next.Bond].Order == 2 && (e == 7 || e == 8 || e == 16) {
-				return true
-			}
+		if partlyDouble(m, n.Atom, nitrogen) {
+			return true
 		}
 	}
 	return false

@@ -5,6 +5,8 @@ type Torsion struct {
 	A, B  int
 	Atoms []int
 	Ends  [2]int // neighbours of A and B that measure the angle Ends[0]–A–B–Ends[1]
+	// Stiff says that the bond is partly double (amides, esters, amidines): two states, planar, with a high barrier between them.
+	Stiff bool
 }
 
 // Rotate turns the side by an angle in radians.
