@@ -24,7 +24,7 @@ func (s *Set) Freedom() int { return len(s.Torsions) + s.RingFreedom + len(s.Inv
 
 // Analyze reads the moves off the graph. Torsions are the single bonds outside rings, amides and conjugated bonds included, without those
 // whose rotation does nothing new (methyl and other tops of three like atoms, ends of linear groups). Cranks are all pairs of atoms of a ring
-// system that, taken out, leave a segment on its own, unless that would twist a double bond.
+// system that, taken out, leave a segment on its own, unless that would twist a double bond or fold a flat ring.
 func Analyze(m *molecule.Molecule) *Set {
 	s := &Set{}
 	ring := ringBonds(m)
@@ -180,6 +180,9 @@ func partlyDouble(m *molecule.Molecule, carbon, donor int) bool {
 // amideLike tells whether a nitrogen shares its lone pair with a carbon that is doubly bonded to oxygen, nitrogen or sulfur, which makes it
 // planar or nearly so.
 func amideLike(m *molecule.Molecule, nitrogen int) bool {
+	if m.Atoms[nitrogen].Element != 7 {
+		return false
+	}
 	for _, n := range m.Neighbors(nitrogen) {
 		if partlyDouble(m, n.Atom, nitrogen) {
 			return true

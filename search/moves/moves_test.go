@@ -49,6 +49,8 @@ func TestAnalyze(t *testing.T) {
 		{"N-methylacetamide: the amide bond, planar nitrogen", "CC(=O)NC", 1, 0, 0},
 		{"ethylamine", "CCN", 1, 0, 1},
 		{"piperidine", "C1CCNCC1", 0, 9, 1},
+		{"caffeine is flat", "CN1C=NC2=C1C(=O)N(C(=O)N2C)C", 0, 0, 0},
+		{"glycine anhydride: the pairs that have a CH2 near", "O=C1CNC(=O)CN1", 0, 9, 0},
 		{"biphenyl", "c1ccccc1-c1ccccc1", 1, 0, 0},
 	} {
 		t.Run(row.name, func(t *testing.T) {

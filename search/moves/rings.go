@@ -34,6 +34,19 @@ func cranks(m *molecule.Molecule, ring []bool) (list []Crank, freedom int) {
 	return list, freedom
 }
 
+// flat tells whether the bonds of an atom lie in one plane.
+func flat(m *molecule.Molecule, atom int) bool {
+	if amideLike(m, atom) {
+		return true
+	}
+	for _, n := range m.Neighbors(atom) {
+		if m.Bonds[n.Bond].Order != 1 {
+			return true
+		}
+	}
+	return false
+}
+
 // ringSystems labels the atoms of each system of rings that share bonds; -1 outside rings.
 func ringSystems(m *molecule.Molecule, ring []bool) []int {
 	label := make([]int, len(m.Atoms))
@@ -63,7 +76,8 @@ func ringSystems(m *molecule.Molecule, ring []bool) []int {
 	return label
 }
 
-// cranksBetween returns the segments that hang on a and b alone, all but the largest.
+// cranksBetween returns the segments that hang on a and b alone, all but the largest, unless turning them would twist a double bond or
+// fold a flat ring.
 func cranksBetween(m *molecule.Molecule, a, b int, ring []bool) []Crank {
 	part := make(map[int]int)
 	var parts [][]int
@@ -111,7 +125,7 @@ func cranksBetween(m *molecule.Molecule, a, b int, ring []bool) []Crank {
 			inner: [2]int{attached[p][0][0], attached[p][1][0]},
 			outer: [2]int{attached[largest][0][0], attached[largest][1][0]},
 		}
-		twists := false
+		twists := flat(m, a) && flat(m, b) && flat(m, c.inner[0]) && flat(m, c.inner[1]) && flat(m, c.outer[0]) && flat(m, c.outer[1])
 		for k, end := range []int{a, b} {
 			for _, n := range m.Neighbors(end) {
 				q, ok := part[n.Atom]
