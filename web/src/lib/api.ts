@@ -6,7 +6,7 @@ interface ProblemDocument {
   title?: string
   detail?: string
   status?: number
-  errors?: { message?: string; location?: string }[]
+  errors?: { message?: string; location?: string; value?: unknown }[]
 }
 
 /** An answer of the server that is no success, in words meant for the user (RFC 9457). */
@@ -15,6 +15,8 @@ export class Problem extends Error {
     readonly status: number,
     message: string,
     readonly hints: string[] = [],
+    /** SMILES of which the user may choose one: stereoisomers or the parts of a mixture. */
+    readonly choices: string[] = [],
   ) {
     super(message)
   }
@@ -38,8 +40,11 @@ async function request<T>(method: string, path: string, body?: unknown): Promise
 
 async function problemOf(answer: Response): Promise<Problem> {
   const document = (await answer.json().catch(() => ({}))) as ProblemDocument
-  const hints = (document.errors ?? []).map((e) => e.message ?? '').filter((m) => m !== '' && m !== document.detail)
-  return new Problem(answer.status, document.detail ?? document.title ?? `The server answered ${answer.status}.`, hints)
+  const detail = document.detail ?? document.title ?? `The server answered ${answer.status}.`
+  const errors = document.errors ?? []
+  const choices = errors.flatMap((e) => (e.location === 'body.molecule' && typeof e.value === 'string' ? [e.value] : []))
+  const hints = errors.flatMap((e) => (e.message && !detail.includes(e.message) && !choices.includes(e.message) ? [e.message] : []))
+  return new Problem(answer.status, detail, hints, choices)
 }
 
 export const checkMolecule = (molecule: MoleculeInput) => request<MoleculeReport>('POST', '/molecules', molecule)

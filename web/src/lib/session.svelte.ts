@@ -40,11 +40,10 @@ class Session {
     const at = this.jobs.findIndex((j) => j.id === job.id)
     this.jobs = at < 0 ? [job, ...this.jobs] : this.jobs.with(at, job)
     this.openId ??= job.id
-    const { quenches, energy_kcal_mol, lowest_kcal_mol, minima, temperature_k } = job.progress
-    if (quenches === 0) return
-    const trace = this.traces[job.id] ?? emptyTrace(4)
-    const values = [minima, energy_kcal_mol, lowest_kcal_mol, temperature_k].map((v) => v ?? Number.NaN)
-    this.traces = { ...this.traces, [job.id]: addPoint(trace, quenches, values) }
+    const { quenches, minima, energy_kcal_mol, temperature_k } = job.progress
+    if (quenches === 0 || job.state !== 'running') return
+    const trace = this.traces[job.id] ?? emptyTrace(3)
+    this.traces = { ...this.traces, [job.id]: addPoint(trace, quenches, [minima, energy_kcal_mol, temperature_k]) }
   }
 }
 

@@ -22,10 +22,10 @@ export interface Progress {
   coverage: Coverage
   fraction: number
   seconds_left: number
-  temperature_k?: number
-  energy_kcal_mol?: number
-  lowest_kcal_mol?: number
-  round?: number
+  temperature_k: number
+  energy_kcal_mol: number
+  lowest_energy_kcal_mol: number
+  round: number
 }
 
 export interface Job {
@@ -35,11 +35,12 @@ export interface Job {
   field: string
   method: string
   seed: number
-  created?: string
-  started?: string
-  finished?: string
+  settings: { window_kcal_mol: number; temperature_k: number }
+  submitted: string
   progress: Progress
-  stop_reason?: string
+  /** Why it ended, in words. */
+  stopped?: string
+  warnings?: string[]
   error?: string
 }
 
@@ -93,4 +94,11 @@ export interface MoleculeReport {
   atoms: number
   rotatable_bonds: number
   stereocentres: { atom: number; label: string }[]
+  stereo_double_bonds: { atoms: [number, number]; label: string }[]
+  /** The possible ones, where the input leaves some stereochemistry open. */
+  stereoisomers?: string[]
+  /** The parts of a salt or mixture. */
+  fragments?: string[]
+  mmff94_obstacle?: string
+  notes?: string[]
 }
