@@ -73,7 +73,9 @@ type answer struct {
 
 func (s *service) send(method, path, body string, header ...string) answer {
 	s.t.Helper()
-	request, err := http.NewRequestWithContext(s.t.Context(), method, s.URL+path, strings.NewReader(body))
+	ctx, cancel := context.WithTimeout(s.t.Context(), time.Minute) // only so that a broken test ends
+	defer cancel()
+	request, err := http.NewRequestWithContext(ctx, method, s.URL+path, strings.NewReader(body))
 	require.NoError(s.t, err)
 	if body != "" {
 		request.Header.Set("Content-Type", "application/json")
@@ -167,6 +169,8 @@ func TestJobFromRequestToRankedMinima(t *testing.T) {
 	require.Equal(t, 2, last.Progress.Minima)
 	require.Equal(t, 1.0, last.Progress.Fraction)
 	require.Len(t, s.done(job.ID), 1, "whoever comes late gets the last state and the end")
+	seen := s.get("/api/v1/jobs/"+job.ID+"/events", "Last-Event-ID", job.ID+"-done")
+	require.Equal(t, http.StatusNoContent, seen.StatusCode, "a browser that connects again must stop")
 
 	// The published MMFF94 difference is 0.78 kcal/mol: Halgren, J. Comput. Chem. 20, 730 (1999), table of conformational energies.
 	d := into[report.Document](t, s.get("/api/v1/molecules/"+job.Molecule.Key+"/minima"))
@@ -182,6 +186,12 @@ func TestJobFromRequestToRankedMinima(t *testing.T) {
 	require.Len(t, d.Minima[0].RotationalConstantsMHz, 3)
 	require.Equal(t, last.Progress.Quenches, d.Quenches)
 	require.GreaterOrEqual(t, d.Coverage.Estimate, 0.99)
+
+	s.send("POST", "/api/v1/jobs", `{"molecule": {"smiles": "CCCC"}, "max_quenches": 1, "window_kcal_mol": 2, "seed": 8}`)
+	more := into[report.Document](t, s.get("/api/v1/molecules/"+job.Molecule.Key+"/minima"))
+	require.Equal(t, d.Coverage, more.Coverage, "a search that has hardly begun takes nothing away")
+	require.Equal(t, 4.0, more.Settings.WindowKcal)
+	require.Equal(t, uint64(7), *more.Seed)
 
 	warm := into[report.Document](t, s.get("/api/v1/molecules/"+job.Molecule.Key+"/minima?temperature_k=1000"))
 	require.Less(t, warm.Minima[0].Population, d.Minima[0].Population, "warmth favours the higher minimum")

@@ -27,10 +27,20 @@ func eventStream(op huma.Operation) huma.Operation {
 	return op
 }
 
-// followJob streams one job, beginning with its present state, and ends after its final one.
-func (s *server) followJob(ctx context.Context, in *jobID) (*huma.StreamResponse, error) {
-	if _, err := s.Queue.Job(in.ID); err != nil {
+type jobFollower struct {
+	ID   string `path:"id" maxLength:"20"`
+	Seen string `header:"Last-Event-ID" doc:"Set by browsers that connect again"`
+}
+
+// followJob streams one job, beginning with its present state, and ends after its final one. A browser that then connects again is told
+// that there is nothing more to come (204), or it would go on trying for ever.
+func (s *server) followJob(ctx context.Context, in *jobFollower) (*huma.StreamResponse, error) {
+	job, err := s.Queue.Job(in.ID)
+	if err != nil {
 		return nil, s.problem(ctx, err)
+	}
+	if job.State.Settled() && in.Seen == eventID(job) {
+		return &huma.StreamResponse{Body: func(hc huma.Context) { hc.SetStatus(http.StatusNoContent) }}, nil
 	}
 	return s.stream(func(send func(store.Job) error) (bool, error) {
 		job, err := s.Queue.Job(in.ID)
@@ -40,6 +50,8 @@ func (s *server) followJob(ctx context.Context, in *jobID) (*huma.StreamResponse
 		return job.State.Settled(), err
 	}, func(job store.Job) (wanted, last bool) { return job.ID == in.ID, job.State.Settled() }), nil
 }
+
+func eventID(job store.Job) string { return job.ID + "-" + string(job.State) }
 
 // followJobs streams all jobs from now on, beginning with those that have not ended.
 func (s *server) followJobs(context.Context, *struct{}) (*huma.StreamResponse, error) {
@@ -78,7 +90,7 @@ func (s *server) stream(begin func(send func(store.Job) error) (done bool, err e
 			if err != nil {
 				return err
 			}
-			return write(fmt.Sprintf("event: job\ndata: %s\n\n", data))
+			return write(fmt.Sprintf("event: job\nid: %s\ndata: %s\n\n", eventID(job), data))
 		}
 		if err := write("retry: 2000\n\n"); err != nil {
 			return

@@ -170,20 +170,26 @@ func (s *server) fieldOf(q *minimaQuery) (string, error) {
 	return "mmff94", nil
 }
 
-// describeSearches says which searches a library comes from: settings and coverage of the latest, effort of all.
+// describeSearches says which searches a library comes from: settings, coverage and warnings of the one that came farthest, effort of all.
 func describeSearches(d *report.Document, searches []store.Job) {
-	for _, job := range searches {
-		window := max(d.Settings.WindowKcal, job.Settings.WindowKcal)
-		d.Settings = job.Settings
-		d.Settings.WindowKcal = window
-		seed := job.Settings.Seed
-		d.Method, d.Seed = job.Settings.Method, &seed
-		d.Coverage, d.StopReason = job.Progress.Coverage, string(job.StopReason)
+	window, coverage := 0.0, -1.0
+	for i := range searches {
+		job := &searches[i]
 		d.Quenches += job.Progress.Quenches
 		d.Evaluations += job.Progress.Evaluations
 		d.WallSeconds += job.Counted.ElapsedSeconds
+		if job.Progress.Quenches > 0 {
+			window = max(window, job.Settings.WindowKcal)
+		}
+		if job.Progress.Coverage.Estimate < coverage {
+			continue
+		}
+		coverage = job.Progress.Coverage.Estimate
+		d.Settings, d.Method, d.Seed = job.Settings, job.Settings.Method, &job.Settings.Seed
+		d.Coverage, d.StopReason = job.Progress.Coverage, string(job.StopReason)
 		d.Warnings = append(slices.Clone(job.Notes), report.Warnings(job.Counted)...)
 	}
+	d.Settings.WindowKcal = max(window, d.Settings.WindowKcal)
 }
 
 // inWindow returns the described minima within a window of the lowest. Those above every window that was searched have no properties.

@@ -92,7 +92,7 @@ func (r *Runner) Submit(job store.Job) (store.Job, error) {
 func (r *Runner) Job(id string) (store.Job, error) {
 	r.mu.Lock()
 	defer r.mu.Unlock()
-	if id == r.current {
+	if id == r.current && id != "" {
 		return r.live, nil
 	}
 	return r.store.Job(id)

@@ -214,10 +214,14 @@ func TestImpossibleActionsAreRefusedWithTheState(t *testing.T) {
 	_, err = b.runner.Cancel(job.ID)
 	require.NoError(t, err)
 	for _, action := range []func(string) (store.Job, error){b.runner.Pause, b.runner.Resume, b.runner.Cancel} {
+		_, err = b.runner.Job("")
+		require.ErrorIs(t, err, store.ErrNotFound)
 		_, err = action(job.ID)
 		require.ErrorAs(t, err, &refused)
 		require.Equal(t, store.Cancelled, refused.State)
 		_, err = action("00000099")
+		require.ErrorIs(t, err, store.ErrNotFound)
+		_, err = action("")
 		require.ErrorIs(t, err, store.ErrNotFound)
 	}
 }
