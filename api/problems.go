@@ -4,7 +4,6 @@ import (
 	"context"
 	"encoding/json"
 	"errors"
-	"fmt"
 	"net/http"
 	"strings"
 
@@ -138,7 +137,7 @@ func known(err error) *Problem {
 	case errors.As(err, &open):
 		var faults []error
 		for _, m := range open.Isomers {
-			faults = append(faults, choice("body.molecule.smiles", "a stereoisomer", smiles.Canonical(m)))
+			faults = append(faults, choice(smiles.Canonical(m)))
 		}
 		return newProblem(unusable, open.Error(), faults...)
 	}
@@ -159,14 +158,14 @@ func inputFaults(input *notation.InputError) []error {
 	case errors.As(input, &fragments):
 		var faults []error
 		for _, text := range fragments.SMILES {
-			faults = append(faults, choice(location, "a part", text))
+			faults = append(faults, choice(text))
 		}
 		return faults
 	}
 	return []error{&Fault{Location: location, Message: input.Error()}}
 }
 
-// choice names something that could be submitted instead.
-func choice(location, kind, text string) *Fault {
-	return &Fault{Location: location, Message: fmt.Sprintf("%s that can be submitted: %s", kind, text), Value: text}
+// choice is a SMILES that could be submitted instead. It stands in the value, as it is, for programs that offer it to their users.
+func choice(text string) *Fault {
+	return &Fault{Location: "body.molecule", Message: text, Value: text}
 }

@@ -37,7 +37,7 @@ func TestBadRequestsAreRefusedWithTheirPlace(t *testing.T) {
 		{"impossible valence", `{"molecule": {"smiles": "CC(C)(C)(C)C"}}`, 422, "body.molecule.smiles", "atom 2"},
 		{"no kekulé structure", `{"molecule": {"smiles": "c1cccc1"}}`, 422, "body.molecule.smiles", "aromatic ring"},
 		{"salt", `{"molecule": {"smiles": "[Na+].CC(=O)[O-]"}}`, 422, "body.molecule", "2 separate molecules"},
-		{"open stereochemistry", `{"molecule": {"smiles": "CC(O)C(=O)O"}}`, 422, "body.molecule.smiles", "stereoisomer"},
+		{"open stereochemistry", `{"molecule": {"smiles": "CC(O)C(=O)O"}}`, 422, "body.molecule", "stereoisomer"},
 		{"element that MMFF94 lacks", `{"molecule": {"smiles": "C[Se]C"}}`, 422, "body.molecule", "atom 2 (Se"},
 		{"5,000 atoms", `{"molecule": {"smiles": "` + strings.Repeat("C", 1666) + `"}}`, 422, "body.molecule", "5000 atoms"},
 		{"no molecule", `{"molecule": {}}`, 422, "body.molecule", "exactly one"},
@@ -94,6 +94,20 @@ func TestSmilesErrorMarksTheColumn(t *testing.T) {
 	lines := strings.Split(p.Detail, "\n")
 	require.Len(t, lines, 3)
 	require.Equal(t, strings.Index(lines[1], "Q"), strings.Index(lines[2], "^"), "the caret stands under the character")
+}
+
+func TestProblemsOfferWhatCanBeSubmittedInstead(t *testing.T) {
+	s := newService(t)
+	for body, count := range map[string]int{
+		`{"molecule": {"smiles": "CC(O)C(O)C"}}`:       3, // 2,3-butanediol: a pair of enantiomers and the meso form
+		`{"molecule": {"smiles": "[Na+].CC(=O)[O-]"}}`: 2,
+	} {
+		p := into[api.Problem](t, s.send("POST", "/api/v1/jobs", body))
+		require.Len(t, p.Errors, count)
+		for _, fault := range p.Errors {
+			require.Equal(t, http.StatusAccepted, s.send("POST", "/api/v1/jobs", `{"molecule": {"smiles": `+quoted(fault.Value.(string))+`}}`).StatusCode)
+		}
+	}
 }
 
 func TestOtherRefusals(t *testing.T) {

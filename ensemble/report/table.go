@@ -19,9 +19,12 @@ func WriteTable(w io.Writer, d Document) error {
 	if d.Field == "lj" {
 		unit = "epsilon"
 	}
-	fmt.Fprintf(w, "%s  %s  %s\n", title(d.Molecule), d.Molecule.Formula, d.Molecule.SMILES)
-	fmt.Fprintf(w, "%d minima within %g %s in %s, %d quenches, %d energies, %.1f s\n",
-		len(d.Minima), d.Settings.WindowKcal, unit, fieldTitle(d.Field), d.Quenches, d.Evaluations, d.WallSeconds)
+	fmt.Fprintf(w, "%s  %s", title(d.Molecule), d.Molecule.Formula)
+	if d.Molecule.Name != "" && d.Molecule.SMILES != "" {
+		fmt.Fprintf(w, "  %s", d.Molecule.SMILES)
+	}
+	fmt.Fprintf(w, "\n%s within %g %s in %s, %d quenches, %d energies, %.1f s\n",
+		minimaCount(len(d.Minima)), d.Settings.WindowKcal, unit, fieldTitle(d.Field), d.Quenches, d.Evaluations, d.WallSeconds)
 	fmt.Fprintf(w, "coverage %s, about %s minima unseen; stopped because %s\n\n",
 		interval(d.Coverage), count(d.Coverage.Unseen), StopSentence(search.StopReason(d.StopReason)))
 	if err := writeRows(w, d, unit); err != nil {
@@ -87,6 +90,13 @@ func fieldTitle(field string) string {
 		return "the Lennard-Jones potential"
 	}
 	return field
+}
+
+func minimaCount(n int) string {
+	if n == 1 {
+		return "1 minimum"
+	}
+	return fmt.Sprintf("%d minima", n)
 }
 
 func interval(c search.Coverage) string {
