@@ -6,7 +6,6 @@ import (
 	"math/rand/v2"
 	"os"
 	"runtime"
-	"strconv"
 	"testing"
 
 	"github.com/stretchr/testify/require"
@@ -149,10 +148,7 @@ func enumerated(t testing.TB, p *search.Problem, most int) *reference {
 // enumeration counts as known.
 func TestVerifyRecall(t *testing.T) {
 	verifyOnly(t)
-	seeds := 3
-	if n, err := strconv.Atoi(os.Getenv("TARN_SEEDS")); err == nil {
-		seeds = n
-	}
+	const seeds = 3
 	totalKnown, totalFound, held, searches := 0, 0, 0, 0
 	fmt.Println("| molecule | minima < 6 | beyond enumeration | quenches | recall < 2 | recall < 5 | recall < 6 | coverage |")
 	fmt.Println("| --- | --- | --- | --- | --- | --- | --- | --- |")
@@ -163,7 +159,7 @@ func TestVerifyRecall(t *testing.T) {
 			var results []*search.Result
 			beyond := 0
 			for seed := range seeds {
-				r, err := search.Run(context.Background(), p, search.Settings{Seed: uint64(seed + 1), Method: search.Method(os.Getenv("TARN_METHOD"))}, nil, search.Hooks{})
+				r, err := search.Run(context.Background(), p, search.Settings{Seed: uint64(seed + 1)}, nil, search.Hooks{})
 				require.NoError(t, err)
 				results = append(results, r)
 				for i := range r.Minima {

@@ -78,6 +78,9 @@ func Run(ctx context.Context, p *Problem, s Settings, from *Checkpoint, h Hooks)
 		if err := r.round(ctx); err != nil {
 			return nil, err
 		}
+		if r.checkpoint.Round >= leastRounds && len(r.checkpoint.Minima) == 0 {
+			return nil, r.noMinimum()
+		}
 	}
 }
 
@@ -148,10 +151,8 @@ func (r *run) closeRound(ctx context.Context, before int) error {
 	if len(fresh) > 0 {
 		c.Fruitless = 0
 	}
-	if !r.problem.Cluster() {
-		if err := r.problem.describe(ctx, fresh, r.settings.Workers); err != nil {
-			return err
-		}
+	if err := r.problem.describe(ctx, fresh, r.settings.Workers); err != nil {
+		return err
 	}
 	c.Discovery = append(c.Discovery, DiscoveryPoint{Quenches: c.Quenches, Minima: len(r.inWindow())})
 	c.Round++
@@ -168,11 +169,16 @@ func (r *run) closeRound(ctx context.Context, before int) error {
 // ErrNoMinimum says that no quench ended in a minimum of the molecule.
 var ErrNoMinimum = errors.New("the search found no minimum")
 
+func (r *run) noMinimum() error {
+	c := &r.checkpoint
+	return fmt.Errorf("%w: of %d quenches %d did not converge, %d left the stereochemistry asked for, %d lost a bond",
+		ErrNoMinimum, c.Quenches, c.Failed, c.Inverted, c.Broken)
+}
+
 func (r *run) result(ctx context.Context, reason StopReason) (*Result, error) {
 	c := &r.checkpoint
 	if len(c.Minima) == 0 {
-		return nil, fmt.Errorf("%w: of %d quenches %d did not converge, %d left the stereochemistry asked for, %d lost a bond",
-			ErrNoMinimum, c.Quenches, c.Failed, c.Inverted, c.Broken)
+		return nil, r.noMinimum()
 	}
 	inWindow := r.inWindow()
 	undescribed := make([]*Minimum, len(inWindow))
