@@ -93,13 +93,14 @@ func Ranked(minima []search.Minimum, temperatureK float64) []Minimum {
 	return rows
 }
 
-// Symbols returns the element symbols of a molecule. The atoms of a Lennard-Jones cluster, for which m is nil, have the symbol X.
+// Symbols returns the element symbols of a molecule. For a cluster m is nil; its atoms, as many as atoms says, have the symbol X.
 func Symbols(m *molecule.Molecule, atoms int) []string {
-	symbols := slices.Repeat([]string{"X"}, atoms)
-	if m != nil {
-		for i, a := range m.Atoms {
-			symbols[i] = a.Element.String()
-		}
+	if m == nil {
+		return slices.Repeat([]string{"X"}, atoms)
+	}
+	symbols := make([]string, len(m.Atoms))
+	for i, a := range m.Atoms {
+		symbols[i] = a.Element.String()
 	}
 	return symbols
 }

@@ -99,6 +99,13 @@ func TestTableSaysWhatAReaderMustKnow(t *testing.T) {
 	}
 }
 
+func TestSymbols(t *testing.T) {
+	m, err := smiles.Parse("[2H]OCl")
+	require.NoError(t, err)
+	require.Equal(t, []string{"H", "O", "Cl"}, report.Symbols(m, 0), "a molecule knows its own atoms, even before a minimum is found")
+	require.Equal(t, []string{"X", "X"}, report.Symbols(nil, 2))
+}
+
 func TestWarnings(t *testing.T) {
 	require.Empty(t, report.Warnings(search.Counted{}))
 	w := report.Warnings(search.Counted{Inverted: 3, InvertedAtoms: []int{2, 5}, Broken: 1, Failed: 2})
