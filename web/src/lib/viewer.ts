@@ -4,6 +4,8 @@
 import type { GLViewer } from '3dmol'
 import { elementColours } from './structure'
 
+const MARGIN = 0.82 // of the fitted size, so that the outermost atoms stay inside
+
 let host: HTMLDivElement | undefined
 let viewer: GLViewer | undefined
 
@@ -35,7 +37,10 @@ export function showStructure(xyz: string, fit: boolean): void {
   viewer.addModel(xyz, 'xyz')
   const colorscheme = { prop: 'elem', map: elementColours }
   viewer.setStyle({}, { stick: { radius: 0.13, colorscheme }, sphere: { scale: 0.22, colorscheme } })
-  if (fit) viewer.zoomTo()
+  if (fit) {
+    viewer.zoomTo()
+    viewer.zoom(MARGIN)
+  }
   viewer.render()
 }
 
