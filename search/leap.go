@@ -58,11 +58,8 @@ func moleculeLeap(x []float64, s *moves.Set, rng *rand.Rand) (changed int) {
 		case k < len(s.Torsions)+len(s.Inversions):
 			s.Inversions[rng.IntN(len(s.Inversions))].Apply(x)
 		default:
-			c := &s.Cranks[rng.IntN(len(s.Cranks))]
-			if rng.Float64() < 0.4 {
-				c.Flap(x)
-			} else {
-				c.Rotate(x, math.Pi*(2*rng.Float64()-1))
+			for range 1 + rng.IntN(mostCranks) {
+				turnCrank(x, &s.Cranks[rng.IntN(len(s.Cranks))], rng)
 			}
 		}
 	}
@@ -89,6 +86,20 @@ func turnTorsion(x []float64, t *moves.Torsion, rng *rand.Rand) {
 		angle = math.Pi + 0.3*(2*rng.Float64()-1)
 	}
 	t.Rotate(x, angle)
+}
+
+// A change of a ring turns one to mostCranks of its segments; flapShare of them flap instead of turning by any angle.
+const (
+	mostCranks = 3
+	flapShare  = 0.3
+)
+
+func turnCrank(x []float64, c *moves.Crank, rng *rand.Rand) {
+	if rng.Float64() < flapShare {
+		c.Flap(x)
+		return
+	}
+	c.Rotate(x, math.Pi*(2*rng.Float64()-1))
 }
 
 // clusterLeap shifts all atoms or resettles the most loosely bound.

@@ -23,16 +23,18 @@ func (k walkKind) String() string {
 // walksInRound is the number of walks of a round, whatever the number of workers: two for each way to choose a start.
 const walksInRound = 8
 
-// kinds returns the kinds of walk of a method; the walks of a round take them in turn. Monte Carlo over minima finds most for its cost, the
-// others find what it finds last (docs/search.md shows the comparison).
-func kinds(m Method) []walkKind {
-	switch m {
-	case Dynamics:
-		return []walkKind{trajectory}
-	case Mixed:
-		return []walkKind{overMinima, overMinima, overMinima, trajectory}
+// kindOf returns what a walk of a round does. Monte Carlo over minima finds most for its cost; the others find what it finds last
+// (docs/search.md shows the comparison).
+func kindOf(m Method, number int) walkKind {
+	switch {
+	case m == Dynamics:
+		return trajectory
+	case m == Mixed && number%4 == 3:
+		return trajectory
+	case m == Anneal && number == 3:
+		return thermal
 	}
-	return []walkKind{overMinima, overMinima, overMinima, thermal}
+	return overMinima
 }
 
 // plan is what a walk is told to do.
@@ -69,7 +71,6 @@ const fewMinima = 3
 func (r *run) plan() []plan {
 	rng := walkStream(r.settings.Seed, r.checkpoint.Round, choiceWalk)
 	inWindow := r.inWindow()
-	available := kinds(r.settings.Method)
 	left := r.settings.MaxQuenches - r.checkpoint.Quenches
 	length := r.problem.quotaOf()
 	if n := len(inWindow); 0 < n && n <= fewMinima && !r.problem.Cluster() {
@@ -81,7 +82,7 @@ func (r *run) plan() []plan {
 		if quota <= 0 {
 			break
 		}
-		pl := plan{number: number, kind: available[number%len(available)], start: -1, quota: quota}
+		pl := plan{number: number, kind: kindOf(r.settings.Method, number), start: -1, quota: quota}
 		switch {
 		case r.problem.Cluster():
 			r.planCluster(&pl, inWindow, rng)
@@ -107,9 +108,6 @@ func (r *run) plan() []plan {
 // one goes on from a low minimum and one roams from any; walking on the surface finds little there and is left to one walk in eight.
 func (r *run) planCluster(pl *plan, inWindow []int, rng *rand.Rand) {
 	small := r.problem.Atoms() <= scatterAtoms
-	if pl.kind == thermal && pl.number != 3 {
-		pl.kind = overMinima
-	}
 	switch {
 	case small && pl.number >= scatterFrom:
 		pl.kind = scatter
