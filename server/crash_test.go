@@ -157,10 +157,24 @@ func TestTerminatedServerEndsAtOnceAndLeavesItsJobInTheQueue(t *testing.T) {
 	p := serveProcess(t, folder)
 	job := into[api.Job](t, p.request("POST", "/api/v1/jobs", `{"molecule": {"smiles": "CCCCCCCCCCCC"}}`))
 	p.follow(job.ID, func(j api.Job) bool { return j.State == store.Running && j.Progress.Round > 0 })
-	ended := make(chan api.Job, 1)
-	go func() { ended <- p.follow(job.ID, func(api.Job) bool { return false }) }() // a stream is open
+	opened, ended := make(chan struct{}), make(chan struct{})
+	go func() {
+		defer close(ended)
+		events := 0
+		p.follow(job.ID, func(api.Job) bool {
+			if events++; events == 1 {
+				close(opened)
+			}
+			return false
+		})
+	}()
+	select {
+	case <-opened:
+	case <-ended:
+		require.FailNow(t, "the stream ended before the server did")
+	}
 	require.NoError(t, p.end(syscall.SIGTERM), p.log.String())
-	require.False(t, (<-ended).State.Settled())
+	<-ended
 
 	s, err := store.Open(folder)
 	require.NoError(t, err)
