@@ -20,7 +20,7 @@ func thermalLimits(p *Problem) limits {
 }
 
 // annealWalk is Metropolis Monte Carlo on the potential energy surface, cooled from a start temperature that sampled uphill moves set, with
-// snapshots quenched along each stage. When it is cold it is reheated, lower each time.
+// snapshots quenched along each stage. When it is cold it is reheated, lower each time, from a minimum of the library.
 func (w *walker) annealWalk(ctx context.Context, start []float64) error {
 	p := w.problem
 	proposals := clusterProposals(p.Atoms())
@@ -62,6 +62,9 @@ func (w *walker) annealWalk(ctx context.Context, start []float64) error {
 		if kT < span.coldest {
 			hottest = max(2*span.coldest, 0.8*hottest)
 			kT = hottest
+			if minimum := w.jump(func(float64) bool { return true }); minimum != nil {
+				m.place(minimum.X)
+			}
 		}
 	}
 }

@@ -7,7 +7,7 @@ import (
 )
 
 // merge takes a trail into the library. Every kept quench is a hit of its minimum. A draw, the evidence for the coverage, is only the first
-// hit of a minimum in a walk, and never the minimum that the walk started from: quenches that follow each other in a walk are not
+// hit of a minimum in a walk, and never a minimum that the walk started from or jumped to: quenches that follow each other in a walk are not
 // independent, and to fall back where one came from is no news.
 func (r *run) merge(t *trail) {
 	c := &r.checkpoint
@@ -15,6 +15,9 @@ func (r *run) merge(t *trail) {
 	c.Evaluations += t.evaluations
 	c.Quenches += len(t.outcomes)
 	drawn := map[int]bool{t.start: true}
+	for _, id := range t.jumps {
+		drawn[id] = true
+	}
 	for i := range t.outcomes {
 		o := &t.outcomes[i]
 		switch o.fate {

@@ -18,6 +18,9 @@ func (w *walker) minimaLimits() limits {
 	return limits{400 * integrate.Boltzmann, 1500 * integrate.Boltzmann}
 }
 
+// jumpShare is how often, per quench, a walk tries to jump to another minimum of the library; that costs no quench.
+const jumpShare = 0.05
+
 // minimaWalk is Monte Carlo over minima: a large move, a quench, and the Metropolis criterion on the energies of the minima before and
 // after. Sources: Z. Li, H. A. Scheraga, Proc. Natl. Acad. Sci. USA 84, 6611 (1987); D. J. Wales, J. P. K. Doye, J. Phys. Chem. A 101,
 // 5111 (1997). The temperature starts from the uphill moves of a first, hottest stage, is cooled by the same schedule as
@@ -30,10 +33,17 @@ func (w *walker) minimaWalk(ctx context.Context, start []float64, energy float64
 	hottest := span.hottest
 	kT := hottest
 	const length = 6 // quenches a stage
+	accepts := func(e float64) bool { return e <= energy || w.rng.Float64() < math.Exp((energy-e)/kT) }
 	for stage := 0; ; stage++ {
 		var uphill []float64
 		accepted, tried, sum, square := 0, 0.0, 0.0, 0.0
 		for range length {
+			if w.rng.Float64() < jumpShare {
+				if minimum := w.jump(accepts); minimum != nil {
+					copy(here, minimum.X)
+					energy = minimum.Energy
+				}
+			}
 			w.leap(trial, here, energy)
 			o, err := w.quench(ctx, trial, w.kelvin(kT))
 			if o.usable() {
@@ -41,7 +51,7 @@ func (w *walker) minimaWalk(ctx context.Context, start []float64, energy float64
 				if o.energy > energy {
 					uphill = append(uphill, o.energy-energy)
 				}
-				if o.energy <= energy || w.rng.Float64() < math.Exp((energy-o.energy)/kT) {
+				if accepts(o.energy) {
 					copy(here, o.x)
 					energy = o.energy
 					accepted++

@@ -40,6 +40,7 @@ type trail struct {
 	stages      []Stage
 	evaluations int
 	inverted    []int // atoms at which a centre inverted
+	jumps       []int // minima that the walk jumped to; like the start they are no news when quenches end there
 }
 
 // walker is the state that all kinds of walk share: where snapshots are quenched and the outcomes noted.
@@ -99,6 +100,19 @@ func (w *walker) quench(ctx context.Context, x []float64, temperatureK float64) 
 		return o, errSpent
 	}
 	return o, nil
+}
+
+// jump picks a minimum of the library for a walk to go on from, if accepts lets it. It returns nil if there is none.
+func (w *walker) jump(accepts func(energy float64) bool) *Minimum {
+	if len(w.library) == 0 {
+		return nil
+	}
+	id := w.rng.IntN(len(w.library))
+	if m := &w.library[id]; accepts(m.Energy) {
+		w.trail.jumps = append(w.trail.jumps, id)
+		return m
+	}
+	return nil
 }
 
 // recognise takes a crude outcome for the minimum that it is close to, of the library or of the walk itself.
