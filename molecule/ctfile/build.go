@@ -3,6 +3,7 @@ package ctfile
 import (
 	"errors"
 	"fmt"
+	"math"
 
 	"tarn/molecule"
 )
@@ -113,20 +114,13 @@ func (t *table) draft(name string) *molecule.Draft {
 	return d
 }
 
-// layout decides between a drawing and a geometry: any z makes a geometry, whatever the header says; a flat one is a
-// geometry only if the header says 3D and nothing in the record speaks against it.
+// layout decides between a drawing and a geometry: any z makes a geometry, whatever the header says. A flat one is a geometry only if
+// nothing in the record speaks against it and the header says 3D, or says nothing and the bonds are as long as those of a molecule.
 func (t *table) layout(implied int) layout {
 	zero, planar := true, true
-	neighbors := make([]int, len(t.atoms))
-	marked := false
 	for _, a := range t.atoms {
 		planar = planar && a.position[2] == 0
 		zero = zero && a.position == [3]float64{}
-	}
-	for _, b := range t.bonds {
-		neighbors[b.a]++
-		neighbors[b.b]++
-		marked = marked || b.direction != plain
 	}
 	switch {
 	case zero && len(t.atoms) > 1:
@@ -136,16 +130,51 @@ func (t *table) layout(implied int) layout {
 			t.note("the header says 2D but there are z coordinates; they are read as a geometry")
 		}
 		return solid
-	case t.dimension != "3D":
+	case t.dimension == "2D":
 		return flat
 	}
-	crowded := false
-	for i, a := range t.atoms {
-		crowded = crowded || neighbors[i] > 3 && a.element < 15
-	}
-	if marked || crowded || implied > 0 {
+	drawn := implied > 0 || t.crowded()
+	switch {
+	case t.dimension == "3D" && drawn:
 		t.note("the header says 3D but the coordinates are those of a flat drawing and are read as such")
 		return flat
+	case t.dimension == "3D":
+		return solid
+	case drawn || !t.lengthsOfMolecule():
+		return flat
 	}
+	t.note("the header does not say whether the coordinates are 2D or 3D; with all hydrogens and real bond lengths they are read as a flat geometry")
 	return solid
+}
+
+// crowded reports whether the record holds what no flat geometry has: wedges, or an atom of the first rows with four neighbours.
+func (t *table) crowded() bool {
+	neighbors := make([]int, len(t.atoms))
+	for _, b := range t.bonds {
+		neighbors[b.a]++
+		neighbors[b.b]++
+		if b.direction != plain {
+			return true
+		}
+	}
+	for i, a := range t.atoms {
+		if neighbors[i] > 3 && a.element < 15 {
+			return true
+		}
+	}
+	return false
+}
+
+// lengthsOfMolecule reports whether every bond is about as long as covalent radii make it. Drawings have bonds of one length, which fits
+// bonds to hydrogen and bonds between other atoms never at a time.
+func (t *table) lengthsOfMolecule() bool {
+	const shortest, longest = 0.78, 1.15 // triple bonds are the shortest against single-bond radii
+	for _, b := range t.bonds {
+		p, q := t.atoms[b.a], t.atoms[b.b]
+		d := math.Hypot(p.position[0]-q.position[0], p.position[1]-q.position[1])
+		if r := d / (p.element.CovalentRadius() + q.element.CovalentRadius()); r < shortest || r > longest {
+			return false
+		}
+	}
+	return len(t.bonds) > 0 || len(t.atoms) == 1
 }

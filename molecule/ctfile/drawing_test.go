@@ -328,7 +328,7 @@ func TestWedgeOnAnyBond(t *testing.T) {
 	})
 }
 
-func TestFlatBenzeneWithHeaderOf3D(t *testing.T) {
+func TestFlatBenzene(t *testing.T) {
 	var s sketch
 	for i := range 6 {
 		angle := float64(i) * math.Pi / 3
@@ -340,7 +340,16 @@ func TestFlatBenzeneWithHeaderOf3D(t *testing.T) {
 	r := readOne(t, file)
 	require.Equal(t, canonical(t, "c1ccccc1"), smiles.Canonical(r.Molecule))
 	require.Len(t, r.Geometry, 36)
-	require.Nil(t, readOne(t, s.file(ctfile.V2000)).Geometry, "without the dimension code it is a drawing")
+	silent := readOne(t, s.file(ctfile.V2000))
+	require.Equal(t, r.Geometry, silent.Geometry, "without the dimension code its bond lengths show that it is a geometry")
+	require.Len(t, silent.Notes, 1)
+	require.Nil(t, readOne(t, strings.Replace(file, "3D", "2D", 1)).Geometry, "the code 2D makes it a drawing")
+	for k := range s.at { // C–C and C–H of one length, as programs draw them
+		if k%2 == 1 {
+			s.at[k] = [2]float64{2 * s.at[k-1][0], 2 * s.at[k-1][1]}
+		}
+	}
+	require.Nil(t, readOne(t, s.file(ctfile.V2000)).Geometry, "bonds of one length are those of a drawing")
 	doubles := 0
 	for _, b := range r.Molecule.Bonds {
 		if b.Order == 2 {
