@@ -55,6 +55,14 @@ func TestAlkanes(t *testing.T) {
 	}
 }
 
+// Each method alone finds the four minima of pentane and the two of cyclohexane (published counts as above).
+func TestEveryMethod(t *testing.T) {
+	for _, method := range search.Methods {
+		require.Len(t, run(t, problem(t, "CCCCC"), search.Settings{Method: method, Seed: 4, MaxQuenches: 240}).Minima, 4, method)
+		require.Len(t, run(t, problem(t, "C1CCCCC1"), search.Settings{Method: method, Seed: 4, MaxQuenches: 240}).Minima, 2, method)
+	}
+}
+
 // A molecule in which nothing moves ends with one minimum and full coverage at once.
 func TestRigidMolecules(t *testing.T) {
 	for _, text := range []string{"C", "c1ccccc1", "O", "C1CC1", "CC"} {
