@@ -1,11 +1,16 @@
 # Targets: run, test, build, bench, lint, verify, page, clean. A newcomer needs `make run` and `make test`.
+SHELL       := /bin/bash
+.SHELLFLAGS := -o pipefail -c
+
 GO        ?= go
 NPM       ?= npm
 LISTEN    ?= 127.0.0.1:8418
 DATA      ?= ./data
 PAGE_SRC  := $(shell find web/src web/public web/index.html web/package.json web/vite.config.ts -type f 2>/dev/null)
 
-.PHONY: run test build bench lint verify page clean tools
+BROWSERS  := chromium chromium-browser google-chrome chromium-headless-shell
+
+.PHONY: run test build bench lint verify page clean tools browser
 
 run: build
 	@mkdir -p $(DATA)
@@ -14,13 +19,20 @@ run: build
 build: page
 	$(GO) build -trimpath -o bin/tarn ./server/tarn
 
-test: tools page
+test: tools page browser
 	cd web && $(NPM) run --silent check && $(NPM) test --silent
 	$(GO) vet ./...
-	TARN_BROWSER_TESTS=require $(GO) test -timeout 30m ./...
+	@if command -v $(BROWSERS) >/dev/null || [ -n "$$CI" ]; then export TARN_BROWSER_TESTS=require; \
+	else echo "Chromium is missing: the page tests are left out. Install the package chromium to run them."; fi; \
+	$(GO) test -timeout 30m ./...
+
+# Installs the browser of the page tests where that takes no question: as root on a Debian system.
+browser:
+	@command -v $(BROWSERS) >/dev/null || [ "$$(id -u)" != 0 ] || ! command -v apt-get >/dev/null || { \
+	apt-get update -qq && DEBIAN_FRONTEND=noninteractive apt-get install -y -qq --no-install-recommends chromium fonts-liberation >/dev/null; }
 
 bench: tools
-	$(GO) test -run '^$$' -bench . -benchmem ./...
+	$(GO) test -timeout 4h -run '^$$' -bench . -benchmem ./...
 
 lint: tools
 	$(GO) vet ./...
@@ -29,8 +41,8 @@ lint: tools
 	@! grep -qE 'https?://' web/package-lock.json || { echo "web/package-lock.json holds addresses"; exit 1; }
 
 # The long checks against published values; prints one table, kept in docs/verification.md.
-verify: build
-	TARN_VERIFY=1 $(GO) test -timeout 4h -count 1 -v -run 'Verify' ./... | tee verify.log | grep -E '^(---|===|ok|FAIL|\s+---|\|)' 
+verify: tools
+	TARN_VERIFY=1 $(GO) test -timeout 4h -count 1 -v -run 'Verify' ./... | tee verify.log | grep -E '^(---|===|ok|FAIL|\s+---|\|)'
 
 page: web/dist/index.html
 
