@@ -29,7 +29,7 @@ test: tools page browser
 # Installs the browser of the page tests where that takes no question: as root on a Debian system.
 browser:
 	@command -v $(BROWSERS) >/dev/null || [ "$$(id -u)" != 0 ] || ! command -v apt-get >/dev/null || { \
-	apt-get update -qq && DEBIAN_FRONTEND=noninteractive apt-get install -y -qq --no-install-recommends chromium fonts-liberation >/dev/null; }
+	apt-get update -qq && DEBIAN_FRONTEND=noninteractive apt-get install -y -qq --no-install-recommends chromium fonts-liberation >/dev/null || echo "Chromium could not be installed"; }
 
 bench: tools
 	$(GO) test -timeout 4h -run '^$$' -bench . -benchmem ./...
