@@ -8,7 +8,7 @@ import (
 
 // merge takes a trail into the library. Every kept quench is a hit of its minimum. A draw, the evidence for the coverage, is only the first
 // hit of a minimum in a walk, and never a minimum that the walk started from or jumped to: quenches that follow each other in a walk are not
-// independent, and to fall back where one came from is no news.
+// independent, and to fall back where one came from is no news. Quenches of random clusters are independent: all of them are draws.
 func (r *run) merge(t *trail) {
 	c := &r.checkpoint
 	c.Walks++
@@ -37,7 +37,7 @@ func (r *run) merge(t *trail) {
 			m := &c.Minima[id]
 			m.Hits++
 			m.LastHitInRound = c.Round
-			if !drawn[id] {
+			if !drawn[id] || t.kind == scatter {
 				drawn[id] = true
 				m.Draws++
 			}

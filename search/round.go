@@ -6,6 +6,7 @@ import (
 	"math"
 
 	"golang.org/x/sync/errgroup"
+	"gonum.org/v1/gonum/floats"
 
 	"tarn/dedupe"
 	"tarn/minimize"
@@ -80,10 +81,13 @@ func (r *run) walk(ctx context.Context, pl plan, ceiling float64) (trail, error)
 	return w.trail, err
 }
 
-// scatterWalk quenches one random cluster after the other.
+// scatterWalk quenches one random cluster after the other, from pressed to airy ones: some minima are reached from dense starts only, others
+// from loose ones.
 func (w *walker) scatterWalk(ctx context.Context) error {
 	for {
-		if _, err := w.quench(ctx, moves.RandomCluster(w.problem.Atoms(), w.rng), 0); err != nil {
+		x := moves.RandomCluster(w.problem.Atoms(), w.rng)
+		floats.Scale(0.6+0.8*w.rng.Float64(), x)
+		if _, err := w.quench(ctx, x, 0); err != nil {
 			return err
 		}
 	}

@@ -15,6 +15,8 @@ const (
 	recent = 0.25
 	// clusterRecent is the same for clusters, some of whose minima are hit once in a hundred thousand quenches.
 	clusterRecent = 0.5
+	// clusterDraws is the number of draws for each known minimum of a cluster below which nothing is believed.
+	clusterDraws = 500
 )
 
 // counts sums up the draws of the minima in the window.
@@ -47,6 +49,9 @@ func coverageOf(c coverage.Counts) Coverage {
 func (r *run) complete(c coverage.Counts) bool {
 	target := r.settings.Coverage
 	now := coverageOf(c)
+	if r.problem.Cluster() && c.Draws < clusterDraws*c.Observed {
+		return false
+	}
 	allowed := max(0.5, (1-target)*float64(c.Observed))
 	return r.checkpoint.Round >= leastRounds+max(1, r.problem.moves.Freedom()) && c.Draws > 0 &&
 		now.Estimate >= target && now.Low >= target-slack && now.Unseen <= allowed && float64(r.foundLately()) <= allowed
