@@ -17,7 +17,7 @@ run: build
 	./bin/tarn serve --demo --listen $(LISTEN) --data $(DATA)
 
 build: page
-	$(GO) build -trimpath -o bin/tarn ./server/tarn
+	$(GO) build -o bin/tarn ./server/tarn
 
 test: tools page browser
 	cd web && $(NPM) run --silent check && $(NPM) test --silent
