@@ -1,6 +1,9 @@
 package search
 
-import "time"
+import (
+	"math"
+	"time"
+)
 
 // Coverage says how complete a search is: the estimated probability that a further draw ends in a known minimum of the window
 // (Good 1953) with its 95 % interval (Esty 1983), and the estimated number of minima of the window that are still unseen
@@ -43,7 +46,10 @@ func (r *run) notice(temperatureK, energy float64, evaluations int) bool {
 	defer r.mu.Unlock()
 	r.running.Quenches++
 	r.running.Evaluations += evaluations
-	r.latest.TemperatureK, r.latest.EnergyKcal = temperatureK, energy
+	r.latest.TemperatureK = temperatureK
+	if !math.IsNaN(energy) && !math.IsInf(energy, 0) { // a quench that failed has no energy to show
+		r.latest.EnergyKcal = energy
+	}
 	if now := time.Now(); r.hooks.Progress != nil && now.Sub(r.shown) >= between {
 		r.shown = now
 		r.latest.Quenches, r.latest.Evaluations = r.running.Quenches, r.running.Evaluations
