@@ -15,12 +15,8 @@ func (w *walker) minimaLimits() limits {
 	case w.problem.Cluster():
 		return limits{0.4, 1.0} // Wales & Doye 1997 found 0.8 to serve all clusters
 	}
-	return limits{400 * integrate.Boltzmann, min(hottestWindow, max(1500*integrate.Boltzmann, w.window/2))}
+	return limits{400 * integrate.Boltzmann, 1500 * integrate.Boltzmann}
 }
-
-// hottestWindow is the highest kT in kcal/mol to which a wide window drives the walks: half a wider window than usual, so that they reach its
-// upper part as easily.
-const hottestWindow = 10
 
 // jumpShare is how often, per quench, a walk tries to jump to another minimum of the library; that costs no quench.
 const jumpShare = 0.05

@@ -49,7 +49,6 @@ func (r *run) walk(ctx context.Context, pl plan, ceiling float64) (trail, error)
 		quencher: minimize.NewQuencher(r.problem.Field, minimize.Settings{CrudeRMS: crudeRMS}),
 		quota:    pl.quota,
 		ceiling:  ceiling,
-		window:   r.settings.WindowKcal,
 		library:  r.checkpoint.Minima,
 		rough:    r.rough,
 		own:      dedupe.NewIndex(r.problem.Symmetry, r.problem.roughTolerance()),

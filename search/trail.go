@@ -50,7 +50,6 @@ type walker struct {
 	quencher *minimize.Quencher
 	quota    int     // quenches that the walk may still do
 	ceiling  float64 // crude energies above this are dropped
-	window   float64 // kcal/mol
 	library  []Minimum
 	rough    *dedupe.Index // of the library, with wide tolerances; only read while walks run
 	own      *dedupe.Index // of what the walk itself has found, with wide tolerances
